@@ -1,0 +1,3 @@
+namespace ArrayWatch.Messaging;
+
+internal static class Placeholder;

@@ -1,0 +1,3 @@
+namespace ArrayWatch.NoiseField;
+
+internal static class Placeholder;

@@ -1,0 +1,3 @@
+namespace ArrayWatch.Simulation;
+
+internal static class Placeholder;

@@ -1,0 +1,3 @@
+namespace ArrayWatch.Storage;
+
+internal static class Placeholder;

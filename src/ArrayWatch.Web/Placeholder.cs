@@ -1,0 +1,3 @@
+namespace ArrayWatch.Web;
+
+internal static class Placeholder;
