@@ -52,6 +52,6 @@ public sealed class ArrayDiagnosis
     {
         ArgumentNullException.ThrowIfNull(destination);
         ArgumentOutOfRangeException.ThrowIfNegative(bin);
-        return false;
+        return _geometry.Count == 0;
     }
 }
