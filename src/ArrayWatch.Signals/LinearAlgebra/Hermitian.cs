@@ -1,95 +1,106 @@
+using System.Runtime.CompilerServices;
+using ArrayWatch.Signals.Kernels;
+
 namespace ArrayWatch.Signals.LinearAlgebra;
 
-/// <summary>Factorisation and products of Hermitian matrices, in place and without allocation.</summary>
+/// <summary>Factorisation of Hermitian matrices, in place and without allocation.</summary>
+/// <remarks>Safe to call concurrently on different matrices.</remarks>
 public static class Hermitian
 {
     /// <summary>
     /// Inverts the positive definite <paramref name="a"/> into <paramref name="inverse"/> by Cholesky
     /// factorisation (A = L Lᴴ, A⁻¹ = L⁻ᴴ L⁻¹).
     /// </summary>
-    /// <param name="a">Hermitian, n×n; its lower triangle is read, and it is overwritten by L.</param>
-    /// <param name="inverse">n×n; receives both triangles of A⁻¹.</param>
+    /// <param name="a">
+    /// Hermitian, n×n; its lower triangle is read, and it is overwritten by L⁻¹, zero above the diagonal
+    /// (in part, when the method answers false).
+    /// </param>
+    /// <param name="inverse">n×n, not <paramref name="a"/>; receives both triangles of A⁻¹.</param>
     /// <param name="logDeterminant">ln det A, nepers; NaN when the method answers false.</param>
-    /// <returns>False when A is not positive definite.</returns>
-    /// <exception cref="ArgumentException">The shapes do not agree.</exception>
-    public static bool TryInvert(ComplexMatrix a, ComplexMatrix inverse, out double logDeterminant)
+    /// <returns>False when A is not positive definite, or holds a value that is not finite.</returns>
+    /// <exception cref="ArgumentException">The shapes do not agree, or the two are one matrix.</exception>
+    /// <remarks>
+    /// Blocks of 16: column blocks are factored left-looking, as products; the inverse of each diagonal
+    /// block stands in its place, so that every triangular solve is a product too. About 8n³/3·2 real
+    /// operations in all.
+    /// </remarks>
+    [SkipLocalsInit]
+    public static unsafe bool TryInvert(ComplexMatrix a, ComplexMatrix inverse, out double logDeterminant)
     {
         ArgumentNullException.ThrowIfNull(a);
         ArgumentNullException.ThrowIfNull(inverse);
         int n = a.Rows;
         if (a.Columns != n || inverse.Rows != n || inverse.Columns != n)
-            throw new ArgumentException("square matrices of one size are needed", nameof(inverse));
-        double[] re = a.Re, im = a.Im;
-        logDeterminant = double.NaN;
-        double log = 0;
-        for (int j = 0; j < n; j++)
+            throw new ArgumentException($"square matrices of one size are needed, not {n}×{a.Columns} and {inverse.Rows}×{inverse.Columns}", nameof(inverse));
+        if (ReferenceEquals(a, inverse)) throw new ArgumentException("the inverse needs a matrix of its own", nameof(inverse));
+        fixed (double* ar = a.Re, ai = a.Im, xr = inverse.Re, xi = inverse.Im)
         {
-            int rj = j * n;
-            double d = re[rj + j];
-            for (int k = 0; k < j; k++) d -= (re[rj + k] * re[rj + k]) + (im[rj + k] * im[rj + k]);
-            if (!(d > 0) || !double.IsFinite(d)) return false;
-            d = Math.Sqrt(d);
-            log += Math.Log(d);
-            re[rj + j] = d;
-            im[rj + j] = 0;
-            for (int i = j + 1; i < n; i++)
+            ComplexView l = ComplexView.Of(a, ar, ai), x = ComplexView.Of(inverse, xr, xi);
+            double log = 0;
+            if (!TryFactor(n, l, ref log))
             {
-                int ri = i * n;
-                double sr = re[ri + j], si = im[ri + j];
-                for (int k = 0; k < j; k++)
-                {
-                    sr -= (re[ri + k] * re[rj + k]) + (im[ri + k] * im[rj + k]);
-                    si -= (im[ri + k] * re[rj + k]) - (re[ri + k] * im[rj + k]);
-                }
-
-                re[ri + j] = sr / d;
-                im[ri + j] = si / d;
+                logDeterminant = double.NaN;
+                return false;
             }
+
+            InvertFactor(n, l, x);
+            ProductWithAdjoint(n, l, x);
+            logDeterminant = log;
+            return true;
+        }
+    }
+
+    /// <summary>Leaves L below the diagonal blocks and the inverse of L's diagonal blocks on them.</summary>
+    [SkipLocalsInit]
+    private static unsafe bool TryFactor(int n, ComplexView l, ref double log)
+    {
+        double* work = stackalloc double[HermitianBlock.WorkLength];
+        for (int j = 0; j < n; j += HermitianBlock.Size)
+        {
+            int wide = Math.Min(HermitianBlock.Size, n - j), rest = n - j - wide;
+            ComplexView diagonal = l.At(j, j), below = l.At(j + wide, j);
+            if (j > 0) ComplexProduct.Multiply(n - j, wide, j, l.At(j, 0), l.At(j, 0).Transposed().Conjugated(), diagonal, ProductMode.Subtract);
+            if (!HermitianBlock.TryInvertFactor(wide, diagonal, work, ref log)) return false;
+            if (rest > 0) ComplexProduct.Multiply(rest, wide, wide, below, diagonal.Transposed().Conjugated(), below, ProductMode.Set);
         }
 
-        InvertLowerTriangle(re, im, n);
-        double[] or = inverse.Re, oi = inverse.Im;
-        for (int i = 0; i < n; i++)
-        {
-            for (int j = 0; j <= i; j++)
-            {
-                double sr = 0, si = 0;
-                for (int k = i; k < n; k++)
-                {
-                    double ar = re[(k * n) + i], ai = -im[(k * n) + i], br = re[(k * n) + j], bi = im[(k * n) + j];
-                    sr += (ar * br) - (ai * bi);
-                    si += (ar * bi) + (ai * br);
-                }
-
-                or[(i * n) + j] = sr;
-                oi[(i * n) + j] = si;
-                or[(j * n) + i] = sr;
-                oi[(j * n) + i] = -si;
-            }
-        }
-
-        logDeterminant = 2 * log;
         return true;
     }
 
-    private static void InvertLowerTriangle(double[] re, double[] im, int n)
+    /// <summary>L⁻¹ by block rows: X[I, :I] = −(X[I, I] L[I, :I]) X[:I, :I]; the scratch holds the bracket.</summary>
+    private static unsafe void InvertFactor(int n, ComplexView l, ComplexView scratch)
     {
-        for (int j = 0; j < n; j++)
+        for (int i = 0; i < n; i += HermitianBlock.Size)
         {
-            re[(j * n) + j] = 1 / re[(j * n) + j];
-            for (int i = j + 1; i < n; i++)
+            int high = Math.Min(HermitianBlock.Size, n - i);
+            if (i > 0) ComplexProduct.Multiply(high, i, high, l.At(i, i), l.At(i, 0), scratch, ProductMode.SetNegated);
+            for (int j = 0; j < i; j += HermitianBlock.Size)
+                ComplexProduct.Multiply(high, HermitianBlock.Size, i - j, scratch.At(0, j), l.At(j, j), l.At(i, j), ProductMode.Set);
+            for (int r = 0; r < high; r++)
             {
-                double sr = 0, si = 0;
-                for (int k = j; k < i; k++)
-                {
-                    double ar = re[(i * n) + k], ai = im[(i * n) + k], br = re[(k * n) + j], bi = im[(k * n) + j];
-                    sr += (ar * br) - (ai * bi);
-                    si += (ar * bi) + (ai * br);
-                }
+                ComplexView right = l.At(i + r, i + high);
+                new Span<double>(right.Re, n - i - high).Clear();
+                new Span<double>(right.Im, n - i - high).Clear();
+            }
+        }
+    }
 
-                double d = -1 / re[(i * n) + i];
-                re[(i * n) + j] = sr * d;
-                im[(i * n) + j] = si * d;
+    /// <summary>result ← Xᴴ X of a lower triangular X: one triangle by blocks, then its mirror image.</summary>
+    private static unsafe void ProductWithAdjoint(int n, ComplexView x, ComplexView result)
+    {
+        for (int i = 0; i < n; i += HermitianBlock.Size)
+        {
+            int high = Math.Min(HermitianBlock.Size, n - i);
+            ComplexProduct.Multiply(high, i + high, n - i, x.At(i, i).Transposed().Conjugated(), x.At(i, 0), result.At(i, 0), ProductMode.Set);
+            for (int r = i; r < i + high; r++)
+            {
+                result.At(r, r).Im[0] = 0;
+                for (int c = 0; c < r; c++)
+                {
+                    ComplexView from = result.At(r, c), to = result.At(c, r);
+                    to.Re[0] = from.Re[0];
+                    to.Im[0] = -from.Im[0];
+                }
             }
         }
     }
