@@ -1,3 +1,0 @@
-namespace ArrayWatch.Simulation;
-
-internal static class Placeholder;
