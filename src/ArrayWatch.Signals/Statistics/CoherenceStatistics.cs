@@ -71,11 +71,13 @@ public static class CoherenceStatistics
             sum += weight * below;
             if (k <= first) break;
             below += difference;
-            difference *= k / (estimate * (k + snapshots - 2));
-            weight *= k / (coherence * (snapshots + k - 1));
-            // Far above the mean both start below the smallest number; take them up again once they can be held.
-            if (weight < 1e-250) weight = Math.Exp(LogNegativeBinomial(k - 1, coherence, snapshots));
-            if (difference < 1e-250) difference = Math.Exp(LogDifference(k - 1, estimate, snapshots));
+            // Far above the mean both are too small to be held to all digits; they are taken up again as they grow.
+            difference = difference < 1e-250
+                ? Math.Exp(LogDifference(k - 1, estimate, snapshots))
+                : difference * k / (estimate * (k + snapshots - 2));
+            weight = weight < 1e-250
+                ? Math.Exp(LogNegativeBinomial(k - 1, coherence, snapshots))
+                : weight * k / (coherence * (k + snapshots - 1));
         }
 
         return Math.Min(1, sum);
