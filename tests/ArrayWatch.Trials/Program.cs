@@ -13,9 +13,10 @@ Option<ulong> start = new("--start-value", "-s") { Description = "Start value of
 Option<int> threads = new("--threads") { Description = "Trials side by side", DefaultValueFactory = _ => 2 };
 Option<bool> verbose = new("--verbose", "-v") { Description = "List every trial that did not go as it should" };
 Option<ulong?> replay = new("--replay") { Description = "Start value of one trial of the one kind named, told decision by decision" };
+Option<bool> demo = new("--demo") { Description = "Play the demonstration's scenes instead and tell what is raised beside what is wrong" };
 RootCommand root = new("Draws arrays, fields, nuisances and faults, runs the diagnosis on them, and prints how it did.")
 {
-    number, kinds, warmUp, watch, hours, size, start, threads, verbose, replay,
+    number, kinds, warmUp, watch, hours, size, start, threads, verbose, replay, demo,
 };
 root.SetAction(result =>
 {
@@ -32,6 +33,12 @@ root.SetAction(result =>
         Verbose = result.GetValue(verbose),
         Replay = result.GetValue(replay),
     };
+    if (result.GetValue(demo))
+    {
+        foreach (DemoScene scene in DemoScenes.All()) Telling.Schedule(TrialRun.Run(TrialDraw.Demonstration(scene), options with { WarmUpSeconds = 0, HealthyHours = 0.24 }), Console.Out);
+        return 0;
+    }
+
     string[] unknown = [.. options.Kinds.Where(k => !FaultKinds.Has(k) && !Nuisances.Has(k))];
     if (unknown.Length > 0)
     {

@@ -14,6 +14,15 @@ internal static class Telling
         if (outcome.Raised.Count == 0) output.WriteLine("    nothing raised");
     }
 
+    /// <summary>Findings beside the faults that a scene has on its schedule, in the order of time.</summary>
+    public static void Schedule(TrialOutcome outcome, TextWriter output)
+    {
+        output.WriteLine(outcome.Case.Description);
+        IEnumerable<(double Time, string Text)> wrong = outcome.Case.Scene.Faults.Select(f => (f.StartSeconds, $"is wrong until {Time(f.EndSeconds)}: {TrialDraw.Tell(f)}"));
+        foreach ((double time, string text) in wrong.Concat(outcome.Raised.Select(r => (r.SceneSeconds, $"    raised: {Finding(r.Finding)}"))).OrderBy(e => e.Item1))
+            output.WriteLine($"{Time(time)} {text}");
+    }
+
     public static void Decision(double time, Diagnosis diagnosis, TrialCase trial, TextWriter output)
     {
         output.WriteLine(string.Create(

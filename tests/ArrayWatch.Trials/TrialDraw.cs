@@ -37,17 +37,19 @@ internal static class TrialDraw
         };
     }
 
-    private static string Describe(Scene scene, Fault? fault)
+    /// <summary>A demonstration's scene, whose faults follow its own schedule.</summary>
+    public static TrialCase Demonstration(DemoScene demo) => new()
     {
-        string waves = string.Join("; ", scene.Sources.OfType<PlaneWave>().Select(w => string.Create(
-            CultureInfo.InvariantCulture, $"wave {w.Spectrum.LevelDecibels:0.0} dB at ({w.Toward.X:0.00}, {w.Toward.Y:0.00}, {w.Toward.Z:0.00})")));
-        string text = string.Create(
-            CultureInfo.InvariantCulture,
-            $"{(Surroundings.IsLine(scene) ? "line" : "plane")} of {scene.Geometry.Count}, aperture {scene.Geometry.ApertureMetres:0.0} m, {scene.Frequencies.Count} bins {scene.Frequencies[0]:0}–{scene.Frequencies[^1]:0} Hz, {scene.SnapshotsPerFrame} × {scene.SnapshotIntervalSeconds:0.00} s, self-noise {scene.SelfNoise.LevelDecibels:0.0} dB, {waves}");
-        return fault is null ? text : $"{text}; {Tell(fault)}";
-    }
+        Name = demo.Id,
+        StartValue = 1,
+        Scene = demo.Scene,
+        Fault = null,
+        ConfiguredSoundSpeed = demo.Scene.SoundSpeed,
+        Options = new DiagnosisOptions { TimeConstantSeconds = demo.TimeConstant.TotalSeconds, FieldComponents = demo.FieldComponents },
+        Description = demo.Title,
+    };
 
-    private static string Tell(Fault fault) => string.Create(CultureInfo.InvariantCulture, $"{fault.Kind} [{string.Join(", ", fault.Channels)}] ") + fault switch
+    public static string Tell(Fault fault) => string.Create(CultureInfo.InvariantCulture, $"{fault.Kind} [{string.Join(", ", fault.Channels)}] ") + fault switch
     {
         DeadFault f => string.Create(CultureInfo.InvariantCulture, $"{f.RemainingDecibels:0.0} dB left"),
         GainFault f => string.Create(CultureInfo.InvariantCulture, $"{f.GainDecibels:0.0} dB"),
@@ -62,4 +64,14 @@ internal static class TrialDraw
         IntermittentFault f => string.Create(CultureInfo.InvariantCulture, $"every {f.PeriodSeconds:0} s for {f.DutyCycle:0.0}"),
         _ => "",
     };
+
+    private static string Describe(Scene scene, Fault? fault)
+    {
+        string waves = string.Join("; ", scene.Sources.OfType<PlaneWave>().Select(w => string.Create(
+            CultureInfo.InvariantCulture, $"wave {w.Spectrum.LevelDecibels:0.0} dB at ({w.Toward.X:0.00}, {w.Toward.Y:0.00}, {w.Toward.Z:0.00})")));
+        string text = string.Create(
+            CultureInfo.InvariantCulture,
+            $"{(Surroundings.IsLine(scene) ? "line" : "plane")} of {scene.Geometry.Count}, aperture {scene.Geometry.ApertureMetres:0.0} m, {scene.Frequencies.Count} bins {scene.Frequencies[0]:0}–{scene.Frequencies[^1]:0} Hz, {scene.SnapshotsPerFrame} × {scene.SnapshotIntervalSeconds:0.00} s, self-noise {scene.SelfNoise.LevelDecibels:0.0} dB, {waves}");
+        return fault is null ? text : $"{text}; {Tell(fault)}";
+    }
 }
