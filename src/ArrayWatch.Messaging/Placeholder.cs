@@ -1,3 +1,0 @@
-namespace ArrayWatch.Messaging;
-
-internal static class Placeholder;
