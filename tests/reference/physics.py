@@ -84,35 +84,32 @@ def surface():
 
 
 def calibration_bound():
-    """Slepian-Bangs trace formula with explicit derivatives, then a pseudo-inverse in the gauge."""
+    """Slepian-Bangs trace formula with explicit derivatives, then the inverse within the gauge."""
     n, nu = 6, 300.0
     x = np.array([0.0, 1.0, 2.1, 2.9, 4.2, 5.0])
     d = x[:, None] - x[None, :]
     r = np.sinc(1.3 * d / np.pi) + 0.5 * np.exp(1j * 1.3 * 0.4 * d) + 0.05 * np.eye(n)
     inverse = np.linalg.inv(r)
 
-    def fisher(direction):
-        f = np.zeros((n, n))
-        derivatives = []
+    derivatives = []
+    for direction in (1j, 1.0):
         for a in range(n):
             e = np.zeros((n, n), complex)
             e[a, a] = direction
             derivatives.append(e @ r + r @ e.conj().T)
-        for a in range(n):
-            for b in range(n):
-                f[a, b] = nu * np.trace(inverse @ derivatives[a] @ inverse @ derivatives[b]).real
-        return f
-
-    phase = fisher(1j)
-    constant = linalg.null_space(np.ones((1, n)))
-    both = linalg.null_space(np.vstack([np.ones(n), x]))
-    for name, basis in (("crb_phase_constant", constant), ("crb_phase_linear", both)):
-        cov = basis @ np.linalg.inv(basis.T @ phase @ basis) @ basis.T
+    f = np.array([[nu * np.trace(inverse @ a @ inverse @ b).real for b in derivatives] for a in derivatives])
+    zero, one = np.zeros(n), np.ones(n)
+    gauges = {
+        "constant": [np.r_[one, zero], np.r_[zero, one]],
+        "linear": [np.r_[one, zero], np.r_[zero, one], np.r_[x, zero]],
+        "level": [np.r_[one, zero]],
+    }
+    for name, gauge in gauges.items():
+        basis = linalg.null_space(np.array(gauge))
+        cov = basis @ np.linalg.inv(basis.T @ f @ basis) @ basis.T
         for i in range(n):
-            emit(name, (i,), np.sqrt(cov[i, i]))
-    cov = np.linalg.inv(fisher(1.0))
-    for i in range(n):
-        emit("crb_gain_known_level", (i,), np.sqrt(cov[i, i]))
+            emit(f"crb_{name}", (i,), np.sqrt(cov[i, i]))
+            emit(f"crb_{name}", (n + i,), np.sqrt(cov[n + i, n + i]))
 
 
 tails()
