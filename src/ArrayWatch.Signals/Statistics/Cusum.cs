@@ -76,16 +76,9 @@ public static class Cusum
             throw new ArgumentOutOfRangeException(nameof(runLength), $"with a reference value of {reference} the run length exceeds {runLength} at every threshold");
         if (Siegmund(0, reference, high) < runLength)
             throw new ArgumentOutOfRangeException(nameof(runLength), $"with a reference value of {reference} a run length of {runLength} needs a threshold above {LargestThreshold}");
-        // Siegmund's form is right within a few per cent, so its own root makes a narrow bracket.
-        if (exact)
-        {
-            double guess = Bisect(h => Math.Log(Siegmund(0, reference, h) / runLength), low, high, 1e-6);
-            double margin = 0.5;
-            while (Excess(Math.Max(low, guess - margin)) > 0) margin *= 2;
-            (low, high) = (Math.Max(low, guess - margin), Math.Min(high, guess + margin));
-        }
-
-        return Bisect(Excess, low, high, 1e-9);
+        // ln of the run length is nearly straight in h, and Siegmund's form right within a few per cent: a good start for secants.
+        double guess = Roots.Rising(h => Math.Log(Siegmund(0, reference, h) / runLength), low, high, 5, 1, 1e-9);
+        return exact ? Roots.Rising(Excess, low, high, guess, 0.02, 1e-9) : guess;
     }
 
     /// <summary>
@@ -113,17 +106,5 @@ public static class Cusum
         Check.InRange(mean, -10, 10, "the mean");
         Check.InRange(reference, -10, 10, "the reference value");
         Check.InRange(threshold, 1e-9, LargestThreshold, "the threshold");
-    }
-
-    private static double Bisect(Func<double, double> rising, double low, double high, double tolerance)
-    {
-        while (high - low > tolerance)
-        {
-            double middle = (low + high) / 2;
-            if (rising(middle) > 0) high = middle;
-            else low = middle;
-        }
-
-        return (low + high) / 2;
     }
 }

@@ -39,14 +39,8 @@ public static class Ewma
     public static double LimitFor(double weight, double runLength)
     {
         Check.InRange(runLength, 5, 1e7, "the run length");
-        double low = 0.1, high = 6;
-        while (high - low > 1e-9)
-        {
-            double middle = (low + high) / 2;
-            if (AverageRunLength(0, weight, middle) > runLength) high = middle;
-            else low = middle;
-        }
-
-        return (low + high) / 2;
+        // Independent decisions would need this limit; those of a slow chart hang together and need less.
+        double start = NormalTail.QuantileOfLogUpper(-Math.Log(2 * runLength));
+        return Roots.Rising(limit => Math.Log(AverageRunLength(0, weight, limit) / runLength), 0.1, 6, start, 0.1, 1e-9);
     }
 }

@@ -40,17 +40,37 @@ public static class LargestEigenvalue
     /// <param name="channels">p, at least 1.</param>
     /// <param name="snapshots">ν, above 1/2.</param>
     /// <param name="falseAlarm">Probability to exceed it by chance, 10⁻⁹⁰ to 1 − 10⁻¹⁰.</param>
-    /// <returns>The threshold in units of the noise power; within 0.7 % of the exact one for p = 4 to 16, on the safe side.</returns>
+    /// <returns>
+    /// The threshold in units of the noise power: exact for ν ≥ p, by the Tracy–Widom law below. Takes some ten milliseconds, so it is to be
+    /// computed once for a ν, not for each matrix.
+    /// </returns>
     /// <exception cref="ArgumentOutOfRangeException">An argument out of its range.</exception>
     /// <remarks>The noise power must be known, not estimated from the same eigenvalues.</remarks>
     public static double Threshold(int channels, double snapshots, double falseAlarm)
-        => ThresholdAt(channels, snapshots, TracyWidom.UpperQuantile(falseAlarm));
+    {
+        (double centre, double scale) = CentreAndScale(channels, snapshots);
+        double approximate = centre + (scale * TracyWidom.UpperQuantile(falseAlarm));
+        if (snapshots < channels) return approximate;
+        double target = TracyWidom.Deviate(TracyWidom.LogOf(falseAlarm));
+        return Roots.Rising(
+            x => TracyWidom.Deviate(WishartExtreme.LogUpper(x, channels, snapshots)) - target,
+            0,
+            centre + (400 * scale) + (400 / snapshots),
+            approximate,
+            0.05 * scale,
+            1e-9 * scale);
+    }
 
-    /// <summary>The same from a Tracy–Widom quantile that was computed once.</summary>
+    /// <summary>
+    /// The asymptotic threshold from a Tracy–Widom quantile that was computed once: for many matrices of different ν.
+    /// </summary>
     /// <param name="channels">p, at least 1.</param>
     /// <param name="snapshots">ν, above 1/2.</param>
     /// <param name="quantile">What <see cref="TracyWidom.UpperQuantile"/> answers for the false-alarm probability.</param>
-    /// <returns>The threshold in units of the noise power.</returns>
+    /// <returns>
+    /// The threshold in units of the noise power. For p = 4 to 128 it is up to 0.5 % above the exact one at a false alarm of 5 to 0.1 %, right
+    /// near 10⁻⁶ and up to 3 % too low at 10⁻¹², where three to ten times as many alarms come as were asked for.
+    /// </returns>
     /// <exception cref="ArgumentOutOfRangeException">An argument out of its range.</exception>
     public static double ThresholdAt(int channels, double snapshots, double quantile)
     {
@@ -62,12 +82,15 @@ public static class LargestEigenvalue
     /// <param name="eigenvalue">λ₁ in units of the noise power, finite.</param>
     /// <param name="channels">p, at least 1.</param>
     /// <param name="snapshots">ν, above 1/2.</param>
-    /// <returns>Not positive, nepers; not below −223.</returns>
+    /// <returns>Not positive, nepers: exact for ν ≥ p; by the Tracy–Widom law below, and then not under −223.</returns>
     /// <exception cref="ArgumentOutOfRangeException">An argument out of its range.</exception>
     public static double LogFalseAlarm(double eigenvalue, int channels, double snapshots)
     {
         (double centre, double scale) = CentreAndScale(channels, snapshots);
-        return TracyWidom.LogUpper((Check.Finite(eigenvalue, "the eigenvalue") - centre) / scale);
+        Check.Finite(eigenvalue, "the eigenvalue");
+        return snapshots >= channels
+            ? WishartExtreme.LogUpper(eigenvalue, channels, snapshots)
+            : TracyWidom.LogUpper((eigenvalue - centre) / scale);
     }
 
     /// <summary>

@@ -10,7 +10,7 @@ namespace ArrayWatch.Signals.Statistics;
 /// F₂(s) is the Fredholm determinant of 1 − K on (s, ∞), K the Airy kernel
 /// K(x, y) = [Ai(x)Ai′(y) − Ai′(x)Ai(y)]/(x − y), discretised by Gauss–Legendre nodes (Bornemann, Markov Process.
 /// Relat. Fields 16, 803–866, 2010). Absolute error near 1e-13; the upper tail is relative, from
-/// −ln F₂ = Σ tr Kᵐ/m. One evaluation takes some 0.4 ms, so a threshold is to be computed once, not for each matrix.
+/// −ln F₂ = Σ tr Kᵐ/m. One evaluation takes near a millisecond: a quantile is to be computed once, not for each matrix.
 /// </remarks>
 public static class TracyWidom
 {
@@ -37,36 +37,29 @@ public static class TracyWidom
     public static double UpperQuantile(double upperProbability)
     {
         Check.InRange(upperProbability, 1e-90, 1 - 1e-10, "the probability to exceed");
-        // Solved where the function is smooth and nearly straight: on the scale of normal deviates.
-        double target = Deviate(upperProbability < 0.5 ? Math.Log(upperProbability) : MoreMath.Log1p(-(1 - upperProbability)));
-        double low = Lowest, high = Highest, s = Math.Clamp(-1.77 + (0.9 * target), Lowest + 1, Highest - 1);
-        for (int i = 0; i < 60; i++)
-        {
-            double value = Deviate(LogUpper(s)) - target;
-            if (value > 0) high = s;
-            else low = s;
-            double slope = (Deviate(LogUpper(s + 1e-4)) - target - value) / 1e-4;
-            double next = s - (value / slope);
-            if (!(next > low && next < high)) next = (low + high) / 2;
-            bool done = Math.Abs(next - s) < 1e-10;
-            s = next;
-            if (done) break;
-        }
-
-        return s;
+        double target = Deviate(LogOf(upperProbability));
+        return Roots.Rising(s => Deviate(LogUpper(s)) - target, Lowest, Highest, -1.77 + (0.9 * target), 0.1, 1e-9);
     }
 
-    /// <summary>The normal deviate with the same upper probability; rises with s.</summary>
-    private static double Deviate(double logUpper) => logUpper >= 0 ? double.NegativeInfinity : NormalTail.QuantileOfLogUpper(logUpper);
+    /// <summary>ln p, without the rounding of a probability near one.</summary>
+    internal static double LogOf(double probability)
+        => probability < 0.5 ? Math.Log(probability) : MoreMath.Log1p(-(1 - probability));
+
+    /// <summary>
+    /// The normal deviate with the same upper probability: on this scale the laws of largest eigenvalues are smooth and nearly straight.
+    /// </summary>
+    internal static double Deviate(double logUpper) => logUpper switch
+    {
+        >= 0 => double.NegativeInfinity,
+        double.NegativeInfinity => double.PositiveInfinity,
+        _ => NormalTail.QuantileOfLogUpper(logUpper),
+    };
 
     private static double LogCdf(double s)
     {
         Check.InRange(s, double.NegativeInfinity, double.PositiveInfinity, "the argument of the Tracy–Widom law");
         s = Math.Min(s, Highest);
-        double[,] kernel = Kernel(s);
-        double trace = 0;
-        for (int i = 0; i < Nodes; i++) trace += kernel[i, i];
-        return trace < 0.05 ? -LogSeries(kernel) : LogDeterminant(kernel);
+        return FredholmDeterminant.LogOneMinus(Kernel(s));
     }
 
     private static double[,] Kernel(double s)
@@ -92,59 +85,5 @@ public static class TracyWidom
         }
 
         return kernel;
-    }
-
-    /// <summary>Σ tr Kᵐ/m = −ln det(1 − K) for a small trace: no subtraction from 1, hence relative accuracy.</summary>
-    private static double LogSeries(double[,] kernel)
-    {
-        double sum = 0;
-        double[,] power = kernel;
-        for (int m = 1; ; m++)
-        {
-            double trace = 0;
-            for (int i = 0; i < Nodes; i++) trace += power[i, i];
-            sum += trace / m;
-            if (m > 1 && trace / m < 1e-16 * sum) return sum;
-            power = Times(power, kernel);
-        }
-    }
-
-    private static double[,] Times(double[,] a, double[,] b)
-    {
-        double[,] c = new double[Nodes, Nodes];
-        for (int i = 0; i < Nodes; i++)
-        {
-            for (int k = 0; k < Nodes; k++)
-            {
-                double f = a[i, k];
-                for (int j = 0; j < Nodes; j++) c[i, j] += f * b[k, j];
-            }
-        }
-
-        return c;
-    }
-
-    /// <summary>ln det(1 − K) by Cholesky factorisation; 1 − K is positive definite.</summary>
-    private static double LogDeterminant(double[,] kernel)
-    {
-        double log = 0;
-        double[,] l = new double[Nodes, Nodes];
-        for (int j = 0; j < Nodes; j++)
-        {
-            double d = 1 - kernel[j, j];
-            for (int k = 0; k < j; k++) d -= l[j, k] * l[j, k];
-            // Far in the lower tail eigenvalues of K round to 1; the determinant is then zero to all digits.
-            if (!(d > 0)) return double.NegativeInfinity;
-            log += Math.Log(d);
-            l[j, j] = Math.Sqrt(d);
-            for (int i = j + 1; i < Nodes; i++)
-            {
-                double sum = -kernel[i, j];
-                for (int k = 0; k < j; k++) sum -= l[i, k] * l[j, k];
-                l[i, j] = sum / l[j, j];
-            }
-        }
-
-        return log;
     }
 }

@@ -1,4 +1,5 @@
 using ArrayWatch.Signals.Statistics;
+using CsCheck;
 
 namespace ArrayWatch.Tests.Signals.Statistics;
 
@@ -108,21 +109,67 @@ public sealed class LargestEigenvalueTests
         Assert.Equal(scale, s, 1e-9);
     }
 
-    // Exact quantiles by Khatri's determinant (1964), recomputed.
+    // Exact quantiles by Khatri's determinant of incomplete gamma functions (1964), recomputed in many digits.
     [Theory]
+    [InlineData(4, 64, 0.5, 1.3245545557)]
     [InlineData(4, 64, 0.05, 1.5246740789)]
     [InlineData(4, 64, 0.01, 1.6176151109)]
     [InlineData(8, 32, 0.05, 2.1923581317)]
     [InlineData(8, 80, 0.05, 1.7021673178)]
     [InlineData(8, 80, 0.01, 1.7820804768)]
     [InlineData(8, 80, 0.001, 1.8777311033)]
+    [InlineData(8, 256, 0.001, 1.4542475857)]
     [InlineData(16, 64, 0.001, 2.4248254023)]
     [InlineData(16, 160, 0.05, 1.7142396675)]
-    public void The_threshold_is_within_half_a_percent_of_the_exact_one_and_above_it(int p, double n, double alarm, double exact)
+    [InlineData(16, 160, 0.5, 1.6039716074)]
+    public void The_threshold_is_the_exact_one(int p, double n, double alarm, double exact)
     {
         double threshold = LargestEigenvalue.Threshold(p, n, alarm);
-        Assert.InRange(threshold / exact, 1, 1.005);
-        ReferenceValues.Near(Math.Log(alarm), LargestEigenvalue.LogFalseAlarm(threshold, p, n), 1e-7);
+        Assert.Equal(exact, threshold, 1e-9);
+        ReferenceValues.Near(Math.Log(alarm), LargestEigenvalue.LogFalseAlarm(threshold, p, n), 1e-8);
+    }
+
+    [Fact]
+    public void The_threshold_inverts_the_law_for_every_size()
+        => Gen.Select(Gen.Int[1, 40], Gen.Double[0, 400], Gen.Double[-40, -0.1]).Always(
+            21,
+            60,
+            (p, more, logAlarm) =>
+            {
+                double n = p + more, alarm = Math.Exp(logAlarm), threshold = LargestEigenvalue.Threshold(p, n, alarm);
+                ReferenceValues.Near(logAlarm, LargestEigenvalue.LogFalseAlarm(threshold, p, n), 1e-6);
+                Assert.True(LargestEigenvalue.LogFalseAlarm(threshold * 1.01, p, n) < logAlarm);
+            });
+
+    // One channel: νλ is a gamma variable of shape ν, another road to the same number.
+    [Theory]
+    [InlineData(1e-3)]
+    [InlineData(1e-12)]
+    [InlineData(1e-60)]
+    public void With_one_channel_the_law_is_the_gamma_law(double alarm)
+    {
+        double threshold = LargestEigenvalue.Threshold(1, 37.5, alarm);
+        ReferenceValues.Near(Math.Log(alarm), GammaTail.LogUpper(37.5, 37.5 * threshold), 1e-9);
+    }
+
+    // Johnstone (2001): both laws meet as the matrices grow.
+    [Theory]
+    [InlineData(4, 64, 0.05, 0.0035)]
+    [InlineData(32, 500, 0.001, 0.0005)]
+    [InlineData(128, 1000, 1e-6, 0.0002)]
+    [InlineData(300, 310.5, 1e-3, 0.0005)]
+    public void The_asymptotic_threshold_approaches_the_exact_one(int p, double n, double alarm, double tolerance)
+        => ReferenceValues.Near(
+            LargestEigenvalue.Threshold(p, n, alarm), LargestEigenvalue.ThresholdAt(p, n, TracyWidom.UpperQuantile(alarm)), tolerance);
+
+    [Fact]
+    public void With_fewer_snapshots_than_channels_the_threshold_is_the_asymptotic_one()
+    {
+        double threshold = LargestEigenvalue.Threshold(16, 8.5, 1e-4);
+        Assert.Equal(LargestEigenvalue.ThresholdAt(16, 8.5, TracyWidom.UpperQuantile(1e-4)), threshold, 1e-12);
+        ReferenceValues.Near(Math.Log(1e-4), LargestEigenvalue.LogFalseAlarm(threshold, 16, 8.5), 1e-7);
+        // No step where one law takes over from the other.
+        ReferenceValues.Near(LargestEigenvalue.Threshold(16, 16, 1e-3), LargestEigenvalue.Threshold(16, 15.99, 1e-3), 5e-3);
     }
 
     // Baik, Ben Arous and Péché (2005); overlap Paul (2007).

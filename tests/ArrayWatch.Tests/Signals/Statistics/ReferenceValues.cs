@@ -1,5 +1,4 @@
 using System.Globalization;
-using System.Runtime.CompilerServices;
 
 namespace ArrayWatch.Tests.Signals.Statistics;
 
@@ -28,6 +27,14 @@ internal static class ReferenceValues
             Math.Abs(actual - expected) <= relative * Math.Abs(expected),
             string.Create(CultureInfo.InvariantCulture, $"expected {expected:R}, got {actual:R}"));
 
-    private static string Folder([CallerFilePath] string here = "")
-        => Path.GetFullPath(Path.Combine(Path.GetDirectoryName(here)!, "..", "..", "..", "reference"));
+    private static string Folder()
+    {
+        for (DirectoryInfo? d = new(AppContext.BaseDirectory); d is not null; d = d.Parent)
+        {
+            string folder = Path.Combine(d.FullName, "tests", "reference");
+            if (Directory.Exists(folder)) return folder;
+        }
+
+        throw new DirectoryNotFoundException("tests/reference is not above the tests' folder");
+    }
 }
