@@ -1,3 +1,0 @@
-namespace ArrayWatch.NoiseField;
-
-internal static class Placeholder;
