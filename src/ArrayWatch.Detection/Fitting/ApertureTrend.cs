@@ -69,11 +69,11 @@ internal sealed class ApertureTrend
         evidence.PhaseFloor = Floor([.. index.Select(i => evidence.Phase[i])], [.. index.Select(i => evidence.StandardError[i])], 0.01);
         evidence.LogGainFloor = Floor([.. index.Select(i => evidence.LogGain[i])], [.. index.Select(i => evidence.StandardError[i])], 0.02);
         if (evidence.Places is not { } places) return;
-        for (int m = 0; m < places.Channels.Count; m++)
+        for (int m = 0; m < places.Channels.Length; m++)
         {
             double gain = Math.Exp(level);
             System.Numerics.Complex back = System.Numerics.Complex.FromPolarCoordinates(gain, -(common + trend[places.Channels[m]]));
-            for (int r = 0; r < places.Channels.Count; r++) places.Cross[r, m] *= back;
+            for (int r = 0; r < places.Channels.Length; r++) places.Cross[r, m] *= back;
             places.Predicted[m] *= gain * gain;
             places.Unpredicted[m] *= gain * gain;
         }

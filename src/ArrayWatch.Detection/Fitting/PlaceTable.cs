@@ -6,22 +6,22 @@ namespace ArrayWatch.Detection.Fitting;
 /// Second moments of untrusted channels' data with the predictions at untrusted channels' places, for one bin.
 /// </summary>
 /// <param name="channels">The untrusted channels, ascending; U of them.</param>
-internal sealed class PlaceTable(IReadOnlyList<int> channels)
+internal sealed class PlaceTable(int[] channels)
 {
     /// <summary>The untrusted channels.</summary>
-    public IReadOnlyList<int> Channels { get; } = channels;
+    public int[] Channels { get; } = channels;
 
     /// <summary>E[x_n y_m*]: data of channel n (row), prediction at the place of channel m (column).</summary>
-    public Complex[,] Cross { get; } = new Complex[channels.Count, channels.Count];
+    public Complex[,] Cross { get; } = new Complex[channels.Length, channels.Length];
 
     /// <summary>E|y_m|².</summary>
-    public double[] Predicted { get; } = new double[channels.Count];
+    public double[] Predicted { get; } = new double[channels.Length];
 
     /// <summary>E|x_n|².</summary>
-    public double[] Level { get; } = new double[channels.Count];
+    public double[] Level { get; } = new double[channels.Length];
 
     /// <summary>Power at place m that the others cannot predict, healthy self-noise included.</summary>
-    public double[] Unpredicted { get; } = new double[channels.Count];
+    public double[] Unpredicted { get; } = new double[channels.Length];
 
     /// <summary>
     /// Power that remains of channel <paramref name="n"/>'s data when they are taken for <paramref name="gain"/> times the prediction at the

@@ -25,8 +25,8 @@ internal sealed class SwapHypothesis : IFaultHypothesis
         BinEvidence[] bins = [.. scene.Bins.Where(b => b.Usable && b.Places is not null)];
         ChannelSummary[] suspects = [.. scene.Unexplained];
         if (bins.Length == 0 || suspects.Length < 2) return;
-        IReadOnlyList<int> places = bins[0].Places!.Channels;
-        int[] rows = [.. suspects.Select(s => places.IndexOf(s.Index)).Where(r => r >= 0)];
+        int[] places = bins[0].Places!.Channels;
+        int[] rows = [.. suspects.Select(s => Array.IndexOf(places, s.Index)).Where(r => r >= 0)];
         if (rows.Length < 2) return;
         double bonus = SimplerNats + (SimplerShare * bins.Sum(b => b.Snapshots));
         double[,] score = new double[rows.Length, rows.Length];
@@ -56,7 +56,7 @@ internal sealed class SwapHypothesis : IFaultHypothesis
     }
 
     private static void Judge(
-        DecisionScene scene, BinEvidence[] bins, IReadOnlyList<int> places, int[] rows, List<int> cycle, int[] assignment,
+        DecisionScene scene, BinEvidence[] bins, int[] places, int[] rows, List<int> cycle, int[] assignment,
         double[,] score, double[] healthy, double[] own)
     {
         double moved = cycle.Sum(k => score[k, assignment[k]]);
