@@ -67,40 +67,57 @@ public sealed class BeamEvaluator
         ArgumentNullException.ThrowIfNull(frequencies);
         ArgumentNullException.ThrowIfNull(copyModel);
         Validate(frequencies.Count, channels, corrections);
-        int n = _geometry.Count;
-        (int Channel, int Sensor, ChannelCorrection? Correction)[] used = Used(corrections);
-        BeamData healthy = new(n), found = new(n);
-        BeamData? corrected = used.Length == 0 ? null : new(used.Length);
-        double[,] sums = new double[_looks.Count, 6];
+        Stage[] stages = Stages(channels, corrections);
+        double[,] conventional = new double[_looks.Count, stages.Length], adaptive = new double[_looks.Count, stages.Length];
         for (int f = 0; f < frequencies.Count; f++)
         {
             copyModel(f, _model);
-            double reference = Trace(_model) / n;
+            double reference = Trace(_model) / _model.Rows;
             if (!(reference > 0) || !double.IsFinite(reference))
                 throw new ArgumentException($"the model of bin {f} has a mean power of {reference}; it must be positive and finite", nameof(copyModel));
-            healthy.Set(_model, (_, i) => (i, 1, 0), f, _loading);
-            found.Set(_model, (bin, i) => Deliver(channels[i], bin, 1), f, _loading);
-            corrected?.Set(_model, (bin, i) => Deliver(channels[used[i].Channel], bin, Factor(used[i].Correction, bin)), f, _loading);
-            for (int d = 0; d < _looks.Count; d++)
+            for (int s = 0; s < stages.Length; s++)
             {
-                SteeringVector.PlaneWave(_geometry, _looks[d].Unit, frequencies[f], soundSpeed, _re, _im);
-                healthy.Steer(_re, _im, i => i);
-                found.Steer(_re, _im, i => i);
-                corrected?.Steer(_re, _im, i => used[i].Sensor);
-                sums[d, 0] += Decibels(healthy.ConventionalRatio() * reference);
-                sums[d, 1] += Decibels(found.ConventionalRatio() * reference);
-                sums[d, 2] += Decibels((corrected?.ConventionalRatio() ?? 0) * reference);
-                sums[d, 3] += Decibels(healthy.AdaptiveRatio() * reference);
-                sums[d, 4] += Decibels(found.AdaptiveRatio() * reference);
-                sums[d, 5] += Decibels((corrected?.AdaptiveRatio() ?? 0) * reference);
+                // Where nothing is wrong, or nothing corrected, the stage before says it all: the common case costs a third.
+                bool same = s > 0 && stages[s] == stages[s - 1];
+                if (!same) stages[s].Data?.Set(_model, stages[s].Deliver, f, _loading);
+                for (int d = 0; d < _looks.Count; d++)
+                {
+                    if (same)
+                    {
+                        conventional[d, s] = conventional[d, s - 1];
+                        adaptive[d, s] = adaptive[d, s - 1];
+                        continue;
+                    }
+
+                    SteeringVector.PlaneWave(_geometry, _looks[d].Unit, frequencies[f], soundSpeed, _re, _im);
+                    stages[s].Data?.Steer(_re, _im, stages[s].SteeredAs);
+                    conventional[d, s] += Decibels(reference * (stages[s].Data?.ConventionalRatio() ?? 0)) / frequencies.Count;
+                    adaptive[d, s] += Decibels(reference * (stages[s].Data?.AdaptiveRatio() ?? 0)) / frequencies.Count;
+                }
             }
         }
 
-        double bins = frequencies.Count;
-        return [.. _looks.Select((look, d) => new BeamAssessment(
-            look,
-            new BeamGains(sums[d, 0] / bins, sums[d, 1] / bins, sums[d, 2] / bins),
-            new BeamGains(sums[d, 3] / bins, sums[d, 4] / bins, sums[d, 5] / bins)))];
+        return [.. _looks.Select((look, d) => new BeamAssessment(look, Gains(conventional, d), Gains(adaptive, d)))];
+
+        static BeamGains Gains(double[,] decibels, int d) => new(decibels[d, 0], decibels[d, 1], decibels[d, 2]);
+    }
+
+    /// <summary>The array healthy, as found, and corrected; a stage that is no different is the one before.</summary>
+    private Stage[] Stages(IReadOnlyList<ChannelResponse> channels, IReadOnlyList<ChannelCorrection> corrections)
+    {
+        int n = _geometry.Count;
+        Stage healthy = new(new BeamData(n), static (_, i) => (i, 1, 0), static i => i);
+        bool faultless = Enumerable.Range(0, n).All(i => channels[i].Carries == i
+            && channels[i].GainReal.All(g => g == 1) && channels[i].GainImaginary.All(g => g == 0) && channels[i].Noise.All(p => p == 0));
+        Stage found = faultless ? healthy : new(new BeamData(n), (bin, i) => Deliver(channels[i], bin, 1), static i => i);
+        if (corrections.All(c => c.Use && c.Carries == c.Index && c.GainReal.All(g => g == 1) && c.GainImaginary.All(g => g == 0)))
+            return [healthy, found, found];
+        (int Channel, int Sensor, ChannelCorrection? Correction)[] used = Used(corrections);
+        Stage corrected = new(
+            used.Length == 0 ? null : new BeamData(used.Length),
+            (bin, i) => Deliver(channels[used[i].Channel], bin, Factor(used[i].Correction, bin)),
+            i => used[i].Sensor);
+        return [healthy, found, corrected];
     }
 
     private static (int Sensor, Complex Gain, double Noise) Deliver(ChannelResponse channel, int bin, Complex factor)
@@ -157,4 +174,8 @@ public sealed class BeamEvaluator
                 throw new ArgumentException($"the correction of channel {c.Index} does not have {bins} bins", nameof(corrections));
         }
     }
+
+    /// <summary>What a beamformer is given, null where no channel is left, and the sensor each data channel is steered as.</summary>
+    private sealed record Stage(
+        BeamData? Data, Func<int, int, (int Sensor, Complex Gain, double Noise)> Deliver, Func<int, int> SteeredAs);
 }

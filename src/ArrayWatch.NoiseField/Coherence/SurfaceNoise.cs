@@ -49,13 +49,16 @@ public static class SurfaceNoise
         ArgumentOutOfRangeException.ThrowIfLessThan(order, 1);
         ArgumentOutOfRangeException.ThrowIfGreaterThan(order, 8);
         if (vertical == 0 && order == 1) return HorizontalDipoles(horizontal);
-        int nodes = 24 + (8 * (int)Math.Ceiling((Math.Abs(vertical) + Math.Abs(horizontal)) / 12));
-        GaussLegendre rule = GaussLegendre.WithNodes(Math.Min(nodes, GaussLegendre.MaximumNodes));
+        // A rule of n nodes follows e^(jxu) once 2n exceeds x/2, and J0(x√(1−u²)), steeper near u = 1, once it exceeds x/√2, each by a few
+        // times the cube root; in eights, so that few rules are made.
+        double v = Math.Abs(vertical), h = Math.Abs(horizontal);
+        GaussLegendre rule = GaussLegendre.WithNodes(8 * (int)Math.Ceiling((11 + order + (0.25 * v) + (0.36 * h) + (3 * Math.Cbrt(v + h))) / 8));
         double re = 0, im = 0;
         for (int i = 0; i < rule.Nodes.Length; i++)
         {
             double u = rule.Nodes[i];
-            double density = rule.Weights[i] * Math.Pow(u, (2 * order) - 1) * Bessel.J0(horizontal * Math.Sqrt((1 - u) * (1 + u)));
+            double directivity = order == 1 ? u : Math.Pow(u, (2 * order) - 1);
+            double density = rule.Weights[i] * directivity * Bessel.J0(horizontal * Math.Sqrt((1 - u) * (1 + u)));
             (double sine, double cosine) = Math.SinCos(vertical * u);
             re += density * cosine;
             im += density * sine;

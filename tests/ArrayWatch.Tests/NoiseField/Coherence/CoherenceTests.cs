@@ -1,6 +1,8 @@
 using System.Numerics;
 using ArrayWatch.NoiseField.Coherence;
 using ArrayWatch.Signals;
+using ArrayWatch.Tests.Signals.Statistics;
+using CsCheck;
 
 namespace ArrayWatch.Tests.NoiseField.Coherence;
 
@@ -86,6 +88,46 @@ public sealed class CoherenceTests
         Assert.Equal(expected.Real, actual.Real, 3e-3);
         Assert.Equal(expected.Imaginary, actual.Imaginary, 3e-3);
     }
+
+    // A two-dimensional quadrature over direction, by SciPy.
+    [Fact]
+    public void Surface_noise_at_a_slant_agrees_with_a_sum_over_directions()
+    {
+        foreach ((double[] a, double value) in ReferenceValues.Of("surface_re"))
+            Assert.Equal(value, SurfaceNoise.Coherence(a[0], a[1], (int)a[2]).Real, 1e-12);
+        foreach ((double[] a, double value) in ReferenceValues.Of("surface_im"))
+            Assert.Equal(value, SurfaceNoise.Coherence(a[0], a[1], (int)a[2]).Imaginary, 1e-12);
+    }
+
+    [Fact]
+    public void Every_coherence_is_a_coherence()
+        => Gen.Select(Gen.Double[-60, 60], Gen.Double[-60, 60], Gen.Double[0, 50]).Always(
+            31,
+            500,
+            (v, h, kappa) =>
+            {
+                Position separation = new(h, 0.3 * h, v);
+                Complex[] values =
+                [
+                    SurfaceNoise.Coherence(v, h, 1 + (int)(kappa / 7)),
+                    DirectionalNoise.Spherical(separation, new(1, v, 0.2), kappa, 300, Speed),
+                    DirectionalNoise.Cylindrical(separation, new(1, v, 0.2), Up, kappa, 300, Speed),
+                    TurbulentNoise.Wind(separation, new(v, 1, 0), 20, 8),
+                ];
+                Complex[] mirrored =
+                [
+                    SurfaceNoise.Coherence(-v, -h, 1 + (int)(kappa / 7)),
+                    DirectionalNoise.Spherical(-1 * separation, new(1, v, 0.2), kappa, 300, Speed),
+                    DirectionalNoise.Cylindrical(-1 * separation, new(1, v, 0.2), Up, kappa, 300, Speed),
+                    TurbulentNoise.Wind(-1 * separation, new(v, 1, 0), 20, 8),
+                ];
+                for (int i = 0; i < values.Length; i++)
+                {
+                    // |Γ| ≤ 1 and Γ(−d) = Γ(d)*, as for any homogeneous field.
+                    Assert.InRange(values[i].Magnitude, 0, 1 + 1e-12);
+                    Assert.InRange((values[i] - Complex.Conjugate(mirrored[i])).Magnitude, 0, 1e-12);
+                }
+            });
 
     [Fact]
     public void Surface_noise_keeps_its_accuracy_over_hundreds_of_wavelengths()
