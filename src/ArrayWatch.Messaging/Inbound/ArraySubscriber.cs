@@ -26,6 +26,7 @@ internal sealed partial class ArraySubscriber(
             try
             {
                 await ConnectAndReceiveAsync(stopping).ConfigureAwait(false);
+                if (stopping.IsCancellationRequested) return;
                 trouble = "the broker closed the connection";
             }
             catch (OperationCanceledException) when (stopping.IsCancellationRequested)
