@@ -9,11 +9,13 @@ internal static class EventIds
     public const int SubscriberConnected = 3010;
     public const int SubscriberDisconnected = 3011;
     public const int SubscriberFallsBack = 3012;
+    public const int SubscriberFailed = 3013;
     public const int PublisherConnected = 3020;
     public const int PublisherDisconnected = 3021;
     public const int PublisherFallsBack = 3022;
     public const int PublishRefused = 3023;
     public const int AlertLeftOut = 3024;
     public const int GoodbyeFailed = 3025;
+    public const int PublisherFailed = 3026;
     public const int BrokerStarted = 3030;
 }

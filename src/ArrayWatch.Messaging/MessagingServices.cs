@@ -14,10 +14,12 @@ public static class MessagingServices
     /// Adds the broker in this process if asked for, the subscriber, the publisher and the sink that feeds it. Needs an
     /// <see cref="IArrayDirectory"/>. Starting throws <see cref="MessagingStartException"/> when a port or a file cannot be had.
     /// </summary>
+    /// <exception cref="ArgumentException">An option is out of range.</exception>
     public static IServiceCollection AddMessaging(this IServiceCollection services, MqttOptions options)
     {
         ArgumentNullException.ThrowIfNull(services);
         ArgumentNullException.ThrowIfNull(options);
+        options.Check();
         services.TryAddSingleton(TimeProvider.System);
         services.AddMetrics();
         services.AddSingleton(options);

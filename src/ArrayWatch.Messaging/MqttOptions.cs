@@ -6,6 +6,9 @@ public sealed record MqttOptions
     /// <summary>16 MiB.</summary>
     public const int DefaultMaxMessageBytes = 16 * 1024 * 1024;
 
+    /// <summary>MQTT packets end at 256 MiB.</summary>
+    private const int MostMessageBytes = 255 * 1024 * 1024;
+
     /// <summary>True: a broker runs in this process, at <see cref="Port"/>, and <see cref="Host"/> is not used.</summary>
     public bool Embedded { get; init; }
 
@@ -50,6 +53,27 @@ public sealed record MqttOptions
 
     /// <summary>QoS 1 messages that the broker may have under way to one array at a time; 1 to 65535. MQTT 5 only.</summary>
     public int ReceiveMaximum { get; init; } = 64;
+
+    /// <exception cref="ArgumentException">An option is out of range; the message names it by its key and gives the range.</exception>
+    internal void Check()
+    {
+        Demand(Port is >= 1 and <= 65535, "port", Port, "between 1 and 65535");
+        Demand(!string.IsNullOrWhiteSpace(Host), "host", Host, "a name or an address");
+        Demand(IsTopic(TopicPrefix), "topicPrefix", TopicPrefix, "a topic without +, # and a slash at its ends");
+        Demand(!string.IsNullOrWhiteSpace(ClientId), "clientId", ClientId, "a stable name");
+        Demand(SessionExpiry >= TimeSpan.Zero, "sessionExpiry", SessionExpiry, "not negative");
+        Demand(MaxMessageBytes is >= 1024 and <= MostMessageBytes, "maxMessageBytes", MaxMessageBytes, $"between 1024 and {MostMessageBytes}");
+        Demand(KeepAlive.TotalSeconds is >= 1 and <= ushort.MaxValue, "keepAlive", KeepAlive, "between 1 and 65535 seconds");
+        Demand(ReceiveMaximum is >= 1 and <= ushort.MaxValue, "receiveMaximum", ReceiveMaximum, "between 1 and 65535");
+    }
+
+    private static bool IsTopic(string topic) =>
+        !string.IsNullOrEmpty(topic) && topic.IndexOfAny(['+', '#', '\0']) < 0 && topic[0] != '/' && topic[^1] != '/';
+
+    private static void Demand(bool isMet, string key, object? value, string range)
+    {
+        if (!isMet) throw new ArgumentException($"broker.{key} is '{value}'; it must be {range}.");
+    }
 }
 
 /// <summary>Versions of MQTT.</summary>

@@ -1,7 +1,7 @@
 #!/usr/bin/env python3
 """Publishes snapshot frames to an MQTT broker as fast as it takes them: 64 channels, 64 bins, 16 snapshots unless stated.
 
-Usage: publish_frames.py PORT ARRAY FRAMES [CHANNELS BINS SNAPSHOTS]
+Usage: publish_frames.py PORT ARRAY FRAMES [CHANNELS BINS SNAPSHOTS [INTERVAL]]
 
 MQTT 5 over a plain socket, QoS 1 with at most WINDOW messages not yet acknowledged, CBOR bodies with float32 data in
 little-endian order (RFC 8746, tag 85). Only the standard library is needed; the packet is made once and only its time
@@ -83,7 +83,7 @@ def packet(sock):
 def main():
     port, array, frames = int(sys.argv[1]), sys.argv[2], int(sys.argv[3])
     channels, bins, snapshots = (int(a) for a in sys.argv[4:7]) if len(sys.argv) > 6 else (64, 64, 16)
-    interval = 0.1
+    interval = float(sys.argv[7]) if len(sys.argv) > 7 else 0.1
     payload, time_at, sequence_at = body(channels, bins, snapshots, interval)
     sock = socket.create_connection(('127.0.0.1', port))
     sock.setsockopt(socket.IPPROTO_TCP, socket.TCP_NODELAY, 1)

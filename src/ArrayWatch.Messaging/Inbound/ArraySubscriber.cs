@@ -1,5 +1,3 @@
-using System.Net.Sockets;
-using System.Security.Authentication;
 using ArrayWatch.Messaging.Connection;
 using Microsoft.Extensions.Logging;
 using MQTTnet.Formatter;
@@ -38,10 +36,11 @@ internal sealed partial class ArraySubscriber(
                 LogFallsBack(_clientId, exception.Message);
                 continue;
             }
-            catch (Exception exception) when (exception is BrokerRefusedException or MqttProtocolException or MessagingStartException
-                or SocketException or IOException or ObjectDisposedException or AuthenticationException or OperationCanceledException)
+            catch (Exception exception)
             {
+                // Nothing that befalls one connection ends the service: it waits and connects again.
                 trouble = exception is OperationCanceledException ? "the broker did not answer in time" : exception.Message;
+                if (!ConnectTrouble.IsExpected(exception)) LogUnexpected(exception, _clientId);
             }
             await PauseAsync(trouble, stopping).ConfigureAwait(false);
         }
@@ -124,6 +123,9 @@ internal sealed partial class ArraySubscriber(
 
     [LoggerMessage(EventIds.SubscriberDisconnected, LogLevel.Warning, "{Client}: no connection to the broker at {Host}:{Port}: {Trouble}; trying again in {Seconds:F1} s and on")]
     private partial void LogDisconnected(string client, string host, int port, string trouble, double seconds);
+
+    [LoggerMessage(EventIds.SubscriberFailed, LogLevel.Error, "{Client}: the connection to the broker ended in an unexpected way")]
+    private partial void LogUnexpected(Exception exception, string client);
 
     [LoggerMessage(EventIds.SubscriberFallsBack, LogLevel.Warning, "{Client}: trying MQTT 3.1.1, since the broker does not take MQTT 5: {Trouble}")]
     private partial void LogFallsBack(string client, string trouble);

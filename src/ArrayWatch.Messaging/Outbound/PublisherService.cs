@@ -1,4 +1,3 @@
-using System.Net.Sockets;
 using System.Text.Json;
 using System.Text.Json.Serialization;
 using ArrayWatch.Messaging.Connection;
@@ -58,10 +57,11 @@ internal sealed partial class PublisherService(
                 LogFallsBack(exception.Message);
                 continue;
             }
-            catch (Exception exception) when (exception is MqttCommunicationException or BrokerRefusedException or MessagingStartException
-                or SocketException or IOException or OperationCanceledException or InvalidOperationException or MqttProtocolViolationException)
+            catch (Exception exception)
             {
+                // Nothing that befalls one connection ends the service: it waits and connects again.
                 trouble = exception is OperationCanceledException ? "the broker did not answer in time" : exception.Message;
+                if (!ConnectTrouble.IsExpected(exception)) LogUnexpected(exception);
             }
             TimeSpan pause = _schedule.Next();
             if (trouble != _lastTrouble) LogDisconnected(trouble, pause.TotalSeconds);
@@ -75,13 +75,14 @@ internal sealed partial class PublisherService(
     {
         using IMqttClient client = new MqttClientFactory().CreateMqttClient();
         using CancellationTokenSource lost = CancellationTokenSource.CreateLinkedTokenSource(stopping);
-        client.DisconnectedAsync += _ => lost.CancelAsync();
+        client.DisconnectedAsync += _ => CancelAsync(lost);
+        MqttProtocolVersion version = _version.Current;
         await ConnectAsync(client, stopping).ConfigureAwait(false);
         metrics.Connected(options.ClientId);
         try
         {
             await PublishStatusAsync(client, "online", stopping).ConfigureAwait(false);
-            LogConnected(options.ClientId, _version.Current, queue.Count);
+            LogConnected(options.ClientId, version, queue.Count);
             _lastTrouble = null;
             _schedule.Reset();
             while (true)
@@ -101,6 +102,18 @@ internal sealed partial class PublisherService(
         finally
         {
             metrics.Disconnected();
+        }
+    }
+
+    private static async Task CancelAsync(CancellationTokenSource source)
+    {
+        try
+        {
+            await source.CancelAsync().ConfigureAwait(false);
+        }
+        catch (ObjectDisposedException)
+        {
+            // The client tells of its end when nobody waits for it any more.
         }
     }
 
@@ -205,6 +218,9 @@ internal sealed partial class PublisherService(
 
     [LoggerMessage(EventIds.PublisherDisconnected, LogLevel.Warning, "No connection to the broker for publishing: {Trouble}; trying again in {Seconds:F1} s and on")]
     private partial void LogDisconnected(string trouble, double seconds);
+
+    [LoggerMessage(EventIds.PublisherFailed, LogLevel.Error, "Publishing to the broker ended in an unexpected way")]
+    private partial void LogUnexpected(Exception exception);
 
     [LoggerMessage(EventIds.PublisherFallsBack, LogLevel.Warning, "Publishing by MQTT 3.1.1, since the broker does not take MQTT 5: {Trouble}")]
     private partial void LogFallsBack(string trouble);

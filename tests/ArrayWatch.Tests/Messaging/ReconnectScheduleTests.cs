@@ -36,6 +36,17 @@ public sealed class ReconnectScheduleTests
         Assert.Equal(MqttProtocolVersion.V500, choice.Current);
     }
 
+    [Fact]
+    public void A_broker_that_took_3_1_1_is_asked_for_5_first_at_the_next_connection()
+    {
+        VersionChoice choice = new(MqttVersion.Automatic);
+        Assert.True(choice.Refuse());
+        choice.Accept();
+        Assert.Equal(MqttProtocolVersion.V500, choice.Current);
+        Assert.True(choice.Refuse());
+        Assert.Equal(MqttProtocolVersion.V311, choice.Current);
+    }
+
     [Theory]
     [InlineData(MqttVersion.Mqtt5, MqttProtocolVersion.V500)]
     [InlineData(MqttVersion.Mqtt311, MqttProtocolVersion.V311)]
