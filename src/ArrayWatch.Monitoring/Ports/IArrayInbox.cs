@@ -63,6 +63,9 @@ public enum RefusalReason
 
     /// <summary>A kind of message that this service does not take for this array.</summary>
     NotSupported,
+
+    /// <summary>A time, interval, overlap or bin centre outside its range.</summary>
+    OutOfRange,
 }
 
 /// <summary>What the platform knows of the water, the air and itself; null where it does not say.</summary>
