@@ -107,47 +107,52 @@ internal static unsafe class ComplexProduct
         }
     }
 
-    /// <summary>tile ← the rows' products with a panel; <paramref name="high"/> of its four rows are meant.</summary>
+    /// <summary>Forms one tile: the products of four rows, or of the first <paramref name="high"/> of them, with a panel.</summary>
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    public static void Tile(ComplexView a, int high, int deep, double* panel, double* tile)
+    public static void Tile(ComplexView a, int high, int deep, double* panel, in TileTarget target)
     {
         nint row1 = Math.Min(1, high - 1) * a.RowStride;
         nint row2 = Math.Min(2, high - 1) * a.RowStride;
         nint row3 = Math.Min(3, high - 1) * a.RowStride;
-        if (Avx512F.IsSupported) ComplexTile512.Multiply(a.Re, a.Im, row1, row2, row3, deep, panel, tile);
-        else ComplexTileVector.Multiply(a.Re, a.Im, row1, row2, row3, deep, panel, tile);
+        if (Avx512F.IsSupported) ComplexTile512.Multiply(a.Re, a.Im, row1, row2, row3, deep, panel, target);
+        else ComplexTileVector.Multiply(a.Re, a.Im, row1, row2, row3, deep, panel, target);
     }
 
+    /// <summary>Whole tiles go straight into C; those at its edges by way of a tile beside it.</summary>
     [SkipLocalsInit]
     private static void Columns(int high, int wide, int deep, ComplexView a, double* panel, ComplexView c, bool accumulate, bool negate)
     {
         double* tile = stackalloc double[TileRows * PanelStride];
-        double sr = negate ? -1 : 1, si = negate != a.Conjugate ? -1 : 1;
+        double re = negate ? -1 : 1, im = negate != a.Conjugate ? -1 : 1;
         for (int i = 0; i < high; i += TileRows)
         {
             int rows = Math.Min(TileRows, high - i);
-            Tile(a.At(i, 0), rows, deep, panel, tile);
+            ComplexView to = c.At(i, 0);
+            if (rows == TileRows && wide == PanelColumns)
+            {
+                Tile(a.At(i, 0), rows, deep, panel, new TileTarget(to.Re, to.Im, to.RowStride, re, im, accumulate));
+                continue;
+            }
+
+            Tile(a.At(i, 0), rows, deep, panel, new TileTarget(tile, tile + PanelColumns, PanelStride, re, im, false));
             for (int r = 0; r < rows; r++)
             {
-                ComplexView to = c.At(i + r, 0);
-                Store(tile + (r * PanelStride), to.Re, wide, sr, accumulate);
-                Store(tile + (r * PanelStride) + PanelColumns, to.Im, wide, si, accumulate);
+                Store(tile + (r * PanelStride), to.Re + (r * to.RowStride), wide, accumulate);
+                Store(tile + (r * PanelStride) + PanelColumns, to.Im + (r * to.RowStride), wide, accumulate);
             }
         }
     }
 
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static void Store(double* from, double* to, int wide, double sign, bool accumulate)
+    private static void Store(double* from, double* to, int wide, bool accumulate)
     {
         int j = 0;
-        Vector<double> s = new(sign);
         for (; j <= wide - Vector<double>.Count; j += Vector<double>.Count)
         {
-            Vector<double> v = Vector.Load(from + j) * s;
+            Vector<double> v = Vector.Load(from + j);
             (accumulate ? v + Vector.Load(to + j) : v).Store(to + j);
         }
 
-        for (; j < wide; j++) to[j] = (accumulate ? to[j] : 0) + (sign * from[j]);
+        for (; j < wide; j++) to[j] = accumulate ? to[j] + from[j] : from[j];
     }
 
     private static void PackRows(ComplexView a, int high, int deep, double* rows)

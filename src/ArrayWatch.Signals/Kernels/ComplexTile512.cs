@@ -12,9 +12,9 @@ namespace ArrayWatch.Signals.Kernels;
 /// </remarks>
 internal static unsafe class ComplexTile512
 {
-    /// <summary>tile ← Σ_k a_k panel_k; see <see cref="ComplexProduct"/> for the layouts.</summary>
+    /// <summary>target ← or += Σ_k a_k panel_k; see <see cref="ComplexProduct"/> for the layouts.</summary>
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    public static void Multiply(double* ar, double* ai, nint row1, nint row2, nint row3, int depth, double* panel, double* tile)
+    public static void Multiply(double* ar, double* ai, nint row1, nint row2, nint row3, int depth, double* panel, in TileTarget target)
     {
         Vector512<double> r00 = default, r01 = default, r10 = default, r11 = default, r20 = default, r21 = default, r30 = default, r31 = default;
         Vector512<double> i00 = default, i01 = default, i10 = default, i11 = default, i20 = default, i21 = default, i30 = default, i31 = default;
@@ -48,18 +48,28 @@ internal static unsafe class ComplexTile512
             panel += ComplexProduct.PanelStride;
         }
 
-        StoreRow(tile, r00, r01, i00, i01);
-        StoreRow(tile + 32, r10, r11, i10, i11);
-        StoreRow(tile + 64, r20, r21, i20, i21);
-        StoreRow(tile + 96, r30, r31, i30, i31);
+        Vector512<double> re = Vector512.Create(target.ReSign), im = Vector512.Create(target.ImSign);
+        double* cr = target.Re, ci = target.Im;
+        Store(cr, r00 * re, r01 * re, target.Accumulate);
+        Store(ci, i00 * im, i01 * im, target.Accumulate);
+        Store(cr + target.Stride, r10 * re, r11 * re, target.Accumulate);
+        Store(ci + target.Stride, i10 * im, i11 * im, target.Accumulate);
+        Store(cr + (2 * target.Stride), r20 * re, r21 * re, target.Accumulate);
+        Store(ci + (2 * target.Stride), i20 * im, i21 * im, target.Accumulate);
+        Store(cr + (3 * target.Stride), r30 * re, r31 * re, target.Accumulate);
+        Store(ci + (3 * target.Stride), i30 * im, i31 * im, target.Accumulate);
     }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static void StoreRow(double* tile, Vector512<double> r0, Vector512<double> r1, Vector512<double> i0, Vector512<double> i1)
+    private static void Store(double* to, Vector512<double> first, Vector512<double> second, bool accumulate)
     {
-        r0.Store(tile);
-        r1.Store(tile + 8);
-        i0.Store(tile + 16);
-        i1.Store(tile + 24);
+        if (accumulate)
+        {
+            first += Vector512.Load(to);
+            second += Vector512.Load(to + 8);
+        }
+
+        first.Store(to);
+        second.Store(to + 8);
     }
 }

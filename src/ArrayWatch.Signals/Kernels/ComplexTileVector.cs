@@ -11,9 +11,9 @@ namespace ArrayWatch.Signals.Kernels;
 /// </remarks>
 internal static unsafe class ComplexTileVector
 {
-    /// <summary>tile ← Σ_k a_k panel_k; see <see cref="ComplexProduct"/> for the layouts.</summary>
+    /// <summary>target ← or += Σ_k a_k panel_k; see <see cref="ComplexProduct"/> for the layouts.</summary>
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    public static void Multiply(double* ar, double* ai, nint row1, nint row2, nint row3, int depth, double* panel, double* tile)
+    public static void Multiply(double* ar, double* ai, nint row1, nint row2, nint row3, int depth, double* panel, in TileTarget target)
     {
         for (int strip = 0; strip < ComplexProduct.PanelColumns; strip += Vector<double>.Count)
         {
@@ -43,15 +43,19 @@ internal static unsafe class ComplexTileVector
                 b += ComplexProduct.PanelStride;
             }
 
-            double* t = tile + strip;
-            r0.Store(t);
-            i0.Store(t + 16);
-            r1.Store(t + 32);
-            i1.Store(t + 48);
-            r2.Store(t + 64);
-            i2.Store(t + 80);
-            r3.Store(t + 96);
-            i3.Store(t + 112);
+            Vector<double> re = new(target.ReSign), im = new(target.ImSign);
+            double* cr = target.Re + strip, ci = target.Im + strip;
+            Store(cr, r0 * re, target.Accumulate);
+            Store(ci, i0 * im, target.Accumulate);
+            Store(cr + target.Stride, r1 * re, target.Accumulate);
+            Store(ci + target.Stride, i1 * im, target.Accumulate);
+            Store(cr + (2 * target.Stride), r2 * re, target.Accumulate);
+            Store(ci + (2 * target.Stride), i2 * im, target.Accumulate);
+            Store(cr + (3 * target.Stride), r3 * re, target.Accumulate);
+            Store(ci + (3 * target.Stride), i3 * im, target.Accumulate);
         }
     }
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static void Store(double* to, Vector<double> value, bool accumulate) => (accumulate ? value + Vector.Load(to) : value).Store(to);
 }

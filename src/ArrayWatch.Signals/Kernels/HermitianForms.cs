@@ -6,8 +6,7 @@ namespace ArrayWatch.Signals.Kernels;
 /// <summary>Forms v_pᴴ M v_q of a Hermitian matrix, as products over the layouts of <see cref="ComplexProduct"/>.</summary>
 internal static unsafe class HermitianForms
 {
-    /// <summary>Rows of the Gram matrix that are formed at a time.</summary>
-    public const int GramRows = 32;
+    private const int GramRows = 32;
 
     /// <summary>b_q ← v_qᴴ M v_q.</summary>
     /// <param name="count">Q.</param>
@@ -26,6 +25,7 @@ internal static unsafe class HermitianForms
         double* panel = stackalloc double[(ComplexProduct.DepthBlock * ComplexProduct.PanelStride) + 8];
         panel = (double*)(((nint)panel + 63) & ~63);
         double* tile = stackalloc double[ComplexProduct.TileRows * ComplexProduct.PanelStride];
+        TileTarget target = new(tile, tile + ComplexProduct.PanelColumns, ComplexProduct.PanelStride, 1, 1, false);
         new Span<double>(forms, count).Clear();
         for (int j = 0; j < n; j += ComplexProduct.PanelColumns)
         {
@@ -38,7 +38,7 @@ internal static unsafe class HermitianForms
                 for (int q = 0; q < count; q += ComplexProduct.TileRows)
                 {
                     int rows = Math.Min(ComplexProduct.TileRows, count - q);
-                    ComplexProduct.Tile(v.At(q, k), rows, deep, panel, tile);
+                    ComplexProduct.Tile(v.At(q, k), rows, deep, panel, target);
                     for (int r = 0; r < rows; r++) forms[q + r] += Dot(tile + (r * ComplexProduct.PanelStride), v.At(q + r, j), wide);
                 }
             }
@@ -51,26 +51,41 @@ internal static unsafe class HermitianForms
     /// <param name="v">Q×n.</param>
     /// <param name="w">n×n.</param>
     /// <param name="gram">Q×Q.</param>
-    /// <param name="work">2·(Q·n + 32·Q) values.</param>
+    /// <param name="work"><see cref="GramWork"/> values.</param>
+    /// <remarks>The columns v_q are copied once to where panels are packed from whole vectors; strips of rows p follow.</remarks>
     public static void Gram(int count, int n, ComplexView v, ComplexView w, double* gram, double* work)
     {
         nint area = (nint)count * n;
-        ComplexView u = new(work, work + area, n, 1, false);
+        ComplexView u = new(work, work + area, n, 1, false), columns = new(work + (2 * area), work + (3 * area), count, 1, false);
+        double* strip = work + (4 * area);
+        for (int q = 0; q < count; q++)
+        {
+            double* re = v.Re + (q * v.RowStride), im = v.Im + (q * v.RowStride);
+            for (int i = 0; i < n; i++)
+            {
+                nint at = ((nint)i * count) + q;
+                columns.Re[at] = re[i];
+                columns.Im[at] = im[i];
+            }
+        }
+
         ComplexProduct.Multiply(count, n, n, v.Conjugated(), w, u, ProductMode.Set);
-        double* strip = work + (2 * area);
         for (int p = 0; p < count; p += GramRows)
         {
             int high = Math.Min(GramRows, count - p), wide = p + high;
-            ComplexView to = new(strip, strip + (GramRows * wide), wide, 1, false);
-            ComplexProduct.Multiply(high, wide, n, u.At(p, 0), v.Transposed(), to, ProductMode.Set);
-            for (int r = 0; r < high; r++)
+            ComplexView to = new(strip, strip + (GramRows * count), wide, 1, false);
+            ComplexProduct.Multiply(high, wide, n, u.At(p, 0), columns, to, ProductMode.Set);
+            for (int r = 0; r < high; r++) SquaredMagnitudes(to.At(r, 0), gram + ((nint)(p + r) * count), p + r + 1);
+            for (int q = 0; q < wide; q++)
             {
-                double* row = gram + ((nint)(p + r) * count);
-                SquaredMagnitudes(to.At(r, 0), row, p + r + 1);
-                for (int q = 0; q < p + r; q++) gram[((nint)q * count) + p + r] = row[q];
+                double* mirror = gram + ((nint)q * count) + p;
+                for (int r = Math.Max(0, q - p + 1); r < high; r++) mirror[r] = gram[((nint)(p + r) * count) + q];
             }
         }
     }
+
+    /// <summary>Values of work space that <see cref="Gram"/> needs.</summary>
+    public static int GramWork(int count, int n) => checked((4 * count * n) + (2 * GramRows * count));
 
     private static double Dot(double* tile, ComplexView v, int wide)
     {

@@ -74,7 +74,7 @@ public static class Products
         ArgumentNullException.ThrowIfNull(weight);
         int q = rows.Rows, n = weight.Rows;
         if (weight.Columns != n || rows.Columns != n || gram.Length != (long)q * q) ThrowRows(rows, weight, $"{gram.Length} values");
-        double[] space = ArrayPool<double>.Shared.Rent(2 * ((q * n) + (HermitianForms.GramRows * q)));
+        double[] space = ArrayPool<double>.Shared.Rent(HermitianForms.GramWork(q, n));
         fixed (double* vr = rows.Re, vi = rows.Im, wr = weight.Re, wi = weight.Im, g = gram, work = space)
         {
             ComplexView v = ComplexView.Of(rows, vr, vi), w = ComplexView.Of(weight, wr, wi);
