@@ -118,7 +118,10 @@ internal static unsafe class ComplexProduct
         else ComplexTileVector.Multiply(a.Re, a.Im, row1, row2, row3, deep, panel, target);
     }
 
-    /// <summary>Whole tiles go straight into C; those at its edges by way of a tile beside it.</summary>
+    /// <summary>
+    /// Whole tiles go straight into C; those at its edges, and all when C is A (a tile is done in strips that each read A),
+    /// by way of a tile beside it.
+    /// </summary>
     [SkipLocalsInit]
     private static void Columns(int high, int wide, int deep, ComplexView a, double* panel, ComplexView c, bool accumulate, bool negate)
     {
@@ -128,7 +131,7 @@ internal static unsafe class ComplexProduct
         {
             int rows = Math.Min(TileRows, high - i);
             ComplexView to = c.At(i, 0);
-            if (rows == TileRows && wide == PanelColumns)
+            if (rows == TileRows && wide == PanelColumns && a.Re != c.Re)
             {
                 Tile(a.At(i, 0), rows, deep, panel, new TileTarget(to.Re, to.Im, to.RowStride, re, im, accumulate));
                 continue;
