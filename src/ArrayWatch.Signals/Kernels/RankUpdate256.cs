@@ -21,6 +21,7 @@ internal static unsafe class RankUpdate256
             for (int q = 0; q <= p; q++)
             {
                 float* s = sum + RankUpdate.TileOffset(p, q), b = packed + (q * RankUpdate.PackedPanelLength);
+                Prefetch(s + RankUpdate.TileLength);
                 Six(s, a, b, depth, keep, gain);
                 if (p == q)
                 {
@@ -37,6 +38,12 @@ internal static unsafe class RankUpdate256
                 Four(s + 8 + (12 * RankUpdate.ColumnLength), a + 8, b + 12, depth, keep, gain);
             }
         }
+    }
+
+    /// <summary>Asks for a tile: with few snapshots the products are too short to hide its arrival.</summary>
+    private static void Prefetch(float* tile)
+    {
+        for (int i = 0; i < RankUpdate.TileLength; i += 16) Sse.Prefetch0(tile + i);
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
