@@ -10,7 +10,7 @@ namespace ArrayWatch.Monitoring.Estimation;
 /// the median over the channels: one loud channel is that channel's business and never a transient.</para>
 /// <para>In a steady Gaussian field r is at most a mean of F exponential variables of mean 1, so that
 /// P(r ≥ t) ≤ exp(−F (t − 1 − ln t)) (Chernoff's bound). The limit is the t at which this is e⁻¹⁸, and 6 dB more for
-/// levels that move and for the level's own error: 19 dB above the level with one bin, 12 dB with twelve, 8.7 dB
+/// levels that move and for the level's own error: 19 dB above the level with one bin, 12 dB with twelve, 8.9 dB
 /// with sixty-four.</para>
 /// <para>What stays above the limit is no transient: when loud snapshots have lasted for three seconds (at least
 /// four intervals; quiet ones between them count back twice), the level is learnt anew from there. A change of 12 dB
