@@ -10,6 +10,9 @@ internal sealed class CborSnapshotReader
 
     private readonly CborReader _reader = new(ReadOnlyMemory<byte>.Empty, CborConformanceMode.Lax);
 
+    /// <summary>Bytes of the last body that were not read.</summary>
+    public int BytesRemaining => _reader.BytesRemaining;
+
     public void Read(ReadOnlyMemory<byte> body, SnapshotFields fields)
     {
         _reader.Reset(body);

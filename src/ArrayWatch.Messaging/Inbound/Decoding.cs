@@ -20,8 +20,16 @@ internal static class Decoding
             or InvalidOperationException or OverflowException or FormatException or ArgumentException;
 
     /// <summary>The refusal that such an exception stands for.</summary>
-    public static Refusal ToRefusal(Exception exception, PayloadFormat? format) => exception is MessageRefusedException refused
-        ? refused.Refusal
-        : new Refusal(RefusalReason.NotDecodable,
-            $"The body is not well-formed {(format == PayloadFormat.Json ? "JSON" : "CBOR")} ({Text.Shorten(exception.Message)}); check the publisher's encoder.");
+    /// <param name="exception">What was thrown.</param>
+    /// <param name="format">How the body is written; null when that was not known yet.</param>
+    /// <param name="cborPosition">The byte that a CBOR reader had come to; null when that is not known.</param>
+    public static Refusal ToRefusal(Exception exception, PayloadFormat? format, int? cborPosition = null)
+    {
+        if (exception is MessageRefusedException refused) return refused.Refusal;
+        string where = exception is JsonException { LineNumber: { } line, BytePositionInLine: { } position }
+            ? string.Create(CultureInfo.InvariantCulture, $" at line {line + 1}, byte {position + 1}")
+            : cborPosition is { } at ? string.Create(CultureInfo.InvariantCulture, $" at byte {at}") : "";
+        return new Refusal(RefusalReason.NotDecodable,
+            $"The body is not well-formed {(format == PayloadFormat.Json ? "JSON" : "CBOR")}{where} ({Text.Shorten(exception.Message)}); check the publisher's encoder.");
+    }
 }

@@ -43,7 +43,7 @@ public sealed class SnapshotDecoder
         }
         catch (Exception exception) when (Decoding.IsMalformed(exception))
         {
-            return Decoding.ToRefusal(exception, format);
+            return Decoding.ToRefusal(exception, format, format == PayloadFormat.Cbor ? body.Length - _cbor.BytesRemaining : null);
         }
     }
 }

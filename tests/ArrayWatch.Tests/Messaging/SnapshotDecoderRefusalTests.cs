@@ -139,6 +139,13 @@ public sealed class SnapshotDecoderRefusalTests
         AssertRefused(Encoding.UTF8.GetBytes("{\"x\":" + new string('[', 100_000)), RefusalReason.NotDecodable, "well-formed JSON");
     }
 
+    [Fact]
+    public void Says_where_a_body_is_broken()
+    {
+        AssertRefused("{\"time\":1,\n \"sequence\":x}"u8, RefusalReason.NotDecodable, "well-formed JSON at line 2, byte 13");
+        AssertRefused([0xA1, 0x64, (byte)'t', (byte)'i', (byte)'m', (byte)'e', 0xFB, 0], RefusalReason.NotDecodable, "well-formed CBOR at byte 6");
+    }
+
     [Theory]
     [InlineData("application/xml")]
     [InlineData("application/cbor-seq")]
