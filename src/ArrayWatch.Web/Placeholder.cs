@@ -1,3 +1,0 @@
-namespace ArrayWatch.Web;
-
-internal static class Placeholder;
