@@ -8,7 +8,9 @@ using Microsoft.AspNetCore.Builder;
 using Microsoft.AspNetCore.Http;
 using Microsoft.AspNetCore.Http.HttpResults;
 using Microsoft.AspNetCore.Mvc;
+using Microsoft.AspNetCore.OpenApi;
 using Microsoft.AspNetCore.Routing;
+using Microsoft.OpenApi;
 
 namespace ArrayWatch.Web.Api;
 
@@ -34,9 +36,20 @@ internal static class AlertEndpoints
                 $"/alerts/{{id}}/{path}",
                 (string id, HttpRequest request, IFleet fleet, IHistory history, TimeProvider time, CancellationToken cancellation) =>
                     ActAsync(verb, id, request, fleet, history, time, cancellation))
-            .WithSummary(summary).Accepts<AlertActionBody>("application/json").Produces<AlertEvent>()
+            .WithSummary(summary).AddOpenApiOperationTransformer(DescribeBodyAsync).Produces<AlertEvent>()
             .ProducesProblem(StatusCodes.Status400BadRequest).ProducesProblem(StatusCodes.Status403Forbidden).ProducesProblem(StatusCodes.Status404NotFound)
             .ProducesProblem(StatusCodes.Status409Conflict).ProducesProblem(StatusCodes.Status415UnsupportedMediaType);
+    }
+
+    // Told to routing as well, another content type would get an answer without a body instead of a problem that says what to send.
+    private static async Task DescribeBodyAsync(OpenApiOperation operation, OpenApiOperationTransformerContext context, CancellationToken cancellation)
+    {
+        OpenApiSchema schema = await context.GetOrCreateSchemaAsync(typeof(AlertActionBody), cancellationToken: cancellation);
+        operation.RequestBody = new OpenApiRequestBody
+        {
+            Required = true,
+            Content = new Dictionary<string, OpenApiMediaType> { ["application/json"] = new() { Schema = schema } },
+        };
     }
 
     private static async Task<IResult> ListAsync(

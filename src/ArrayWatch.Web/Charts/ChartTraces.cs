@@ -55,7 +55,7 @@ internal static class ChartTraces
 
     private static XAxis X(ChartAxis axis)
     {
-        XAxis x = new() { Title = new() { Text = axis.Title }, ZeroLine = false, AutoMargin = Plotly.Blazor.LayoutLib.XAxisLib.AutoMarginFlag.True };
+        XAxis x = new() { NTicks = 12, TickAngle = 0, Title = new() { Text = axis.Title }, ZeroLine = false, AutoMargin = Plotly.Blazor.LayoutLib.XAxisLib.AutoMarginFlag.True };
         if (axis.IsTime) x.Type = Plotly.Blazor.LayoutLib.XAxisLib.TypeEnum.Date;
         if (axis is { Minimum: { } low, Maximum: { } high }) x.Range = [low, high];
         return x;

@@ -18,6 +18,10 @@ public partial class ChannelStrip : ComponentBase
     [Parameter, EditorRequired]
     public IReadOnlyList<string> Labels { get; set; } = [];
 
+    /// <summary>True when data have stopped: what is drawn is no longer so, and looks it.</summary>
+    [Parameter]
+    public bool IsOld { get; set; }
+
     /// <inheritdoc/>
     protected override void OnParametersSet()
     {

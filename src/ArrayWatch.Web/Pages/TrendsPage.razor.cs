@@ -24,6 +24,7 @@ public partial class TrendsPage : LiveComponent
     private DateTimeOffset _next;
     private ChartSpec? _grid;
     private ChartSpec? _line;
+    private double _limit;
     private string? _error;
 
     /// <summary>Id of the array.</summary>
@@ -57,6 +58,7 @@ public partial class TrendsPage : LiveComponent
             TrendGridView? grid = _metric.PerChannel
                 ? TrendGridView.Of(await History.TrendGridAsync(Id, _metric.Key, _from, _to, GridPoints, Gone), labels, _metric.IsDeviation)
                 : null;
+            _limit = grid?.Limit ?? 0;
             _grid = grid is null ? null : TrendCharts.Grid(grid, _metric);
             int? channel = _metric.PerChannel ? _channel : null;
             _line = TrendCharts.Line(await History.TrendAsync(Id, _metric.Key, channel, _from, _to, LinePoints, Gone), _metric,

@@ -31,7 +31,7 @@ internal static class EstimateText
                 : key is "from" or "into" && Number(value) is { } index ? Label(index, labels)
                 : key == "dutyCycle" && Number(value) is { } duty ? (duty * 100).ToString("F0", CultureInfo.InvariantCulture) + " % of the time"
                 : Value(value, error, unit);
-            lines.Add(new(key == "mapping" ? "really carries" : name, text));
+            lines.Add(new(key == "mapping" ? "order found" : name, text));
         }
         return lines;
     }

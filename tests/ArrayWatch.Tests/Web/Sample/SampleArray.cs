@@ -1,7 +1,7 @@
-using ArrayWatch.Detection;
 using ArrayWatch.Monitoring.Ports;
 using ArrayWatch.Monitoring.Reports;
 using ArrayWatch.Signals;
+using ChannelStanding = ArrayWatch.Detection.Standing;
 
 namespace ArrayWatch.Tests.Web.Sample;
 
@@ -14,7 +14,7 @@ internal sealed record SampleArray(string Id, ArrayGeometry Geometry)
 
     public TimeSpan Age { get; init; } = TimeSpan.FromSeconds(2);
 
-    public IReadOnlyDictionary<int, Standing> Standings { get; init; } = new Dictionary<int, Standing>();
+    public IReadOnlyDictionary<int, ChannelStanding> Standings { get; init; } = new Dictionary<int, ChannelStanding>();
 
     public IReadOnlyDictionary<int, double> Gains { get; init; } = new Dictionary<int, double>();
 
@@ -110,11 +110,11 @@ internal sealed record SampleArray(string Id, ArrayGeometry Geometry)
         return (Math.Sqrt((re * re) + (im * im)), Math.Atan2(im, re) * 180 / Math.PI);
     }
 
-    private Standing Of(int index) => Standings.GetValueOrDefault(index, Detection.Standing.Trusted);
+    private ChannelStanding Of(int index) => Standings.GetValueOrDefault(index, ChannelStanding.Trusted);
 
     private ChannelReport Channel(int i)
     {
-        bool blind = Of(i) is Detection.Standing.Unknown or Detection.Standing.OutOfService;
+        bool blind = Of(i) is ChannelStanding.Unknown or ChannelStanding.OutOfService;
         double small = Math.Sin(i * 2.7);
         return new ChannelReport
         {

@@ -86,7 +86,7 @@ internal static class SampleArrays
         Kind = "dead",
         State = AlertState.ReturnedUnacknowledged,
         Priority = AlertPriority.Medium,
-        Channels = ["H07"],
+        Channels = ["H7"],
         Indices = [6],
         Onset = now.AddHours(-7),
         Raised = now.AddHours(-6.9),
@@ -95,7 +95,7 @@ internal static class SampleArrays
         Estimate = new Dictionary<string, object> { ["levelDecibels"] = -48.2 },
         Confidence = 0.99996,
         Effect = new Dictionary<string, double> { ["conventional"] = 0.3, ["adaptive"] = 0.6 },
-        Advice = "Nothing now; look at the connector of H07 when convenient.",
+        Advice = "Nothing now; look at the connector of H7 when convenient.",
         Cause = "loose connector",
         Evidence = new Dictionary<string, double> { ["multiple coherence with the rest"] = 0.004, ["level against neighbours, dB"] = -17.1 },
     };

@@ -1,4 +1,3 @@
-using ArrayWatch.Detection;
 using ArrayWatch.Monitoring.Ports;
 using ArrayWatch.Monitoring.Reports;
 using ArrayWatch.Signals;

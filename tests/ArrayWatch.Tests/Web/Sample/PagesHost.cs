@@ -1,28 +1,28 @@
 using ArrayWatch.Monitoring.Ports;
-using ArrayWatch.Tests.Web.Sample;
 using ArrayWatch.Web;
 using Microsoft.AspNetCore.Builder;
 using Microsoft.AspNetCore.Hosting;
-using Microsoft.AspNetCore.Hosting.Server;
-using Microsoft.AspNetCore.Hosting.Server.Features;
 using Microsoft.Extensions.DependencyInjection;
 using Microsoft.Extensions.Logging;
 
-namespace ArrayWatch.EndToEnd.Tests.Pages;
+namespace ArrayWatch.Tests.Web.Sample;
 
 /// <summary>The pages alone, over invented arrays, on a free loopback port.</summary>
 internal sealed class PagesHost : IAsyncDisposable
 {
     private readonly WebApplication _app;
 
-    private PagesHost(WebApplication app, SampleFleet fleet, string address)
+    private PagesHost(WebApplication app, SampleFleet fleet, SampleHistory history, string address)
     {
         _app = app;
         Fleet = fleet;
+        History = history;
         Address = address;
     }
 
     public SampleFleet Fleet { get; }
+
+    public SampleHistory History { get; }
 
     /// <summary>Without a slash at the end.</summary>
     public string Address { get; }
@@ -44,8 +44,7 @@ internal sealed class PagesHost : IAsyncDisposable
         WebApplication app = builder.Build();
         app.MapPages();
         await app.StartAsync();
-        string address = app.Services.GetRequiredService<IServer>().Features.GetRequiredFeature<IServerAddressesFeature>().Addresses.First();
-        return new(app, fleet, address);
+        return new(app, fleet, history, app.Urls.First());
     }
 
     public async ValueTask DisposeAsync() => await _app.DisposeAsync();
