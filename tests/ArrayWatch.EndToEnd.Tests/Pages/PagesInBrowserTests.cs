@@ -10,7 +10,7 @@ public sealed class PagesInBrowserTests(Chromium chromium) : IClassFixture<Chrom
     private static readonly LocatorAssertionsToContainTextOptions _patient = new() { Timeout = 30_000 };
 
     [Theory]
-    [InlineData("/", "2 of 5 arrays", "article.card")]
+    [InlineData("/", "aft: 2 channels faulty: H12 and H18", "article.card")]
     [InlineData("/arrays/aft", "2 channels faulty: H12 and H18 carry each other's data", "figure.geometry svg")]
     [InlineData("/arrays/meadow", "All 16 channels trusted", "table.channels")]
     [InlineData("/arrays/dome", "Data stopped", ".stale")]
@@ -70,6 +70,6 @@ public sealed class PagesInBrowserTests(Chromium chromium) : IClassFixture<Chrom
 
         await using PagesHost again = await PagesHost.StartAsync(port);
         await Expect(watched.Page.Locator("#page-lost")).ToBeHiddenAsync(new() { Timeout = 90_000 });
-        await Expect(watched.Page.Locator("h1")).ToContainTextAsync("2 of 5 arrays", _patient);
+        await Expect(watched.Page.Locator("h1")).ToContainTextAsync("aft: 2 channels faulty", _patient);
     }
 }
