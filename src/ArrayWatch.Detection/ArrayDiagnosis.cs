@@ -21,8 +21,8 @@ public sealed class ArrayDiagnosis
     // Below this many effective snapshots the estimate says too little of anything.
     private const double LeastSnapshots = 16;
 
-    // Time that full evidence must last, in memories: after it, a change has turned over in the estimate.
-    private const double DwellMemories = 1.25;
+    // Time that full evidence must last, in fast memories: three of the recent one, after which a change has turned over in it.
+    private const double DwellMemories = 0.75;
 
     private const double BeamsEverySeconds = 60;
 
@@ -68,10 +68,10 @@ public sealed class ArrayDiagnosis
         double elapsed = double.IsNaN(_last) ? 0 : Math.Max(0, input.TimeSeconds - _last);
         _last = input.TimeSeconds;
         bool ready = input.TimeSeconds - _first >= 0.9 * _options.TimeConstantSeconds && snapshots >= LeastSnapshots;
-        if (snapshots < LeastSnapshots || !_tracker.TryUpdate(input.Fast, input.Frequencies, input.SoundSpeed, input.OutOfService))
+        if (snapshots < LeastSnapshots || !_tracker.TryUpdate(input.Fast, input.Recent, input.Frequencies, input.SoundSpeed, input.OutOfService))
             return Nothing(input);
         BinEvidence[] bins = [.. _tracker.Bins.Select(b => b.Evidence)];
-        bool understood = IsUnderstood(bins);
+        bool understood = IsUnderstood(bins, snapshots);
         NoteDeviations(input.TimeSeconds, elapsed);
         DecisionScene scene = new()
         {
@@ -128,10 +128,10 @@ public sealed class ArrayDiagnosis
     };
 
     // The field is understood while most bins have no large eigenvalue beside the model.
-    private bool IsUnderstood(BinEvidence[] bins)
+    private bool IsUnderstood(BinEvidence[] bins, double snapshots)
     {
         int trusted = _tracker.Trusted.Count(t => t);
-        double edge = bins.Length == 0 ? 0 : ApertureTrend.Median([.. bins.Select(b => Math.Pow(1 + Math.Sqrt(trusted / Math.Max(b.Snapshots, 1)), 2))]);
+        double edge = bins.Length == 0 ? 0 : ApertureTrend.Median([.. bins.Select(b => Math.Pow(1 + Math.Sqrt(trusted / snapshots), 2))]);
         double median = ApertureTrend.Median([.. bins.Where(b => b.LargestEigenvalue > 0).Select(b => b.LargestEigenvalue)]);
         return trusted > _geometry.Count / 2 && median < 4 * edge;
     }

@@ -47,6 +47,8 @@ internal sealed class ApertureTrend
     public void Remove(BinEvidence evidence, bool[] trusted)
     {
         int[] index = [.. Enumerable.Range(0, trusted.Length).Where(i => trusted[i] && evidence.StandardError[i] < 1)];
+        Array.Clear(evidence.PhaseTrend);
+        evidence.CommonLogGain = 0;
         if (index.Length < 3) return;
         double level = Median([.. index.Select(i => evidence.LogGain[i])]);
         double sine = 0, cosine = 0;
@@ -59,24 +61,38 @@ internal sealed class ApertureTrend
         double common = Math.Atan2(sine, cosine);
         double[] relative = [.. evidence.Phase.Select(p => Wrap(p - common))];
         double[] trend = Fit(index, relative, evidence.StandardError);
+        evidence.CommonLogGain = level;
         for (int i = 0; i < trusted.Length; i++)
         {
-            evidence.LogGain[i] -= level;
-            evidence.Phase[i] = Wrap(relative[i] - trend[i]);
-            evidence.ExpectedLevel[i] *= Math.Exp(2 * level);
+            evidence.PhaseTrend[i] = Wrap(common + trend[i]);
+            if (trusted[i]) Apply(evidence, i);
         }
 
         evidence.PhaseFloor = Floor([.. index.Select(i => evidence.Phase[i])], [.. index.Select(i => evidence.StandardError[i])], 0.01);
         evidence.LogGainFloor = Floor([.. index.Select(i => evidence.LogGain[i])], [.. index.Select(i => evidence.StandardError[i])], 0.02);
+    }
+
+    /// <summary>Takes the trend that the trusted channels show out of the other channels and their places.</summary>
+    public static void RemoveFromOthers(BinEvidence evidence)
+    {
         if (evidence.Places is not { } places) return;
+        double gain = Math.Exp(evidence.CommonLogGain);
         for (int m = 0; m < places.Channels.Length; m++)
         {
-            double gain = Math.Exp(level);
-            System.Numerics.Complex back = System.Numerics.Complex.FromPolarCoordinates(gain, -(common + trend[places.Channels[m]]));
+            int channel = places.Channels[m];
+            Apply(evidence, channel);
+            System.Numerics.Complex back = System.Numerics.Complex.FromPolarCoordinates(gain, -evidence.PhaseTrend[channel]);
             for (int r = 0; r < places.Channels.Length; r++) places.Cross[r, m] *= back;
             places.Predicted[m] *= gain * gain;
             places.Unpredicted[m] *= gain * gain;
         }
+    }
+
+    private static void Apply(BinEvidence evidence, int channel)
+    {
+        evidence.LogGain[channel] -= evidence.CommonLogGain;
+        evidence.Phase[channel] = Wrap(evidence.Phase[channel] - evidence.PhaseTrend[channel]);
+        evidence.ExpectedLevel[channel] *= Math.Exp(2 * evidence.CommonLogGain);
     }
 
     /// <summary>Wraps an angle to ±π.</summary>

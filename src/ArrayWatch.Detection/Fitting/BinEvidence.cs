@@ -43,8 +43,14 @@ internal sealed class BinEvidence(int channels)
     /// <summary>Spread of the trusted channels' log-gains beyond their standard errors, nepers.</summary>
     public double LogGainFloor { get; set; }
 
-    /// <summary>Effective snapshots, ν.</summary>
-    public double Snapshots { get; set; }
+    /// <summary>Effective snapshots, ν, that each channel was judged by.</summary>
+    public double[] Snapshots { get; } = new double[channels];
+
+    /// <summary>Common log-gain that was taken out, nepers.</summary>
+    public double CommonLogGain { get; set; }
+
+    /// <summary>Phases that were taken out, radians.</summary>
+    public double[] PhaseTrend { get; } = new double[channels];
 
     /// <summary>Largest eigenvalue of R⁻¹S over the trusted channels; about (1+√(N/ν))² when the model holds.</summary>
     public double LargestEigenvalue { get; set; }

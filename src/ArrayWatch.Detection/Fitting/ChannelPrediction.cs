@@ -25,18 +25,15 @@ internal sealed class ChannelPrediction
         _n = work.Channels;
     }
 
-    /// <summary>Fills <paramref name="evidence"/> from the fitted workspace.</summary>
+    /// <summary>Fills <paramref name="evidence"/> for the trusted channels from the fitted workspace.</summary>
     /// <param name="tracker">The bin.</param>
     /// <param name="trusted">Channels that were fitted.</param>
-    /// <param name="snapshots">ν.</param>
+    /// <param name="snapshots">ν of the workspace's data.</param>
     /// <param name="evidence">Receives what the bin says.</param>
     public void Evaluate(BinTracker tracker, bool[] trusted, double snapshots, BinEvidence evidence)
     {
         FieldPowers powers = tracker.Powers!;
-        double[] noises = [.. Enumerable.Range(0, _n).Where(i => trusted[i]).Select(i => powers.ChannelNoise[i]).Order()];
-        double usual = noises[noises.Length / 2];
-        int[] others = [.. Enumerable.Range(0, _n).Where(i => !trusted[i])];
-        evidence.Snapshots = snapshots;
+        double usual = UsualNoise(powers, trusted);
         for (int i = 0; i < _n; i++)
         {
             if (!trusted[i]) continue;
@@ -47,16 +44,36 @@ internal sealed class ChannelPrediction
             double predicted = Math.Max(remains - level + (2 * cross.Real), 1e-9 * level);
             double unpredicted = Math.Max(0, (1 / weight) - powers.ChannelNoise[i]) + usual;
             Complex own = Complex.FromPolarCoordinates(Math.Exp(tracker.LogGain[i]), tracker.Phase[i]);
-            double ownPower = Math.Exp(2 * tracker.LogGain[i]);
-            Fill(evidence, i, level, cross, predicted, unpredicted, own, ownPower, usual);
+            evidence.Snapshots[i] = snapshots;
+            Fill(evidence, i, level, cross, predicted, unpredicted, own, Math.Exp(2 * tracker.LogGain[i]), usual);
         }
+    }
 
-        evidence.Places = others.Length == 0 ? null : Places(others, usual);
+    /// <summary>Fills <paramref name="evidence"/> for the channels that are not trusted, from the workspace's data, which may be newer than the fit.</summary>
+    /// <param name="tracker">The bin.</param>
+    /// <param name="trusted">Channels that were fitted.</param>
+    /// <param name="snapshots">ν of the workspace's data.</param>
+    /// <param name="evidence">Receives what the bin says.</param>
+    public void EvaluateOthers(BinTracker tracker, bool[] trusted, double snapshots, BinEvidence evidence)
+    {
+        int[] others = [.. Enumerable.Range(0, _n).Where(i => !trusted[i])];
+        evidence.Places = null;
+        if (others.Length == 0) return;
+        double usual = UsualNoise(tracker.Powers!, trusted);
+        PlaceTable table = Places(others, usual);
+        table.Snapshots = snapshots;
+        evidence.Places = table;
         for (int a = 0; a < others.Length; a++)
         {
-            PlaceTable t = evidence.Places!;
-            Fill(evidence, others[a], t.Level[a], t.Cross[a, a], t.Predicted[a], t.Unpredicted[a], Complex.One, 1, usual);
+            evidence.Snapshots[others[a]] = snapshots;
+            Fill(evidence, others[a], table.Level[a], table.Cross[a, a], table.Predicted[a], table.Unpredicted[a], Complex.One, 1, usual);
         }
+    }
+
+    private double UsualNoise(FieldPowers powers, bool[] trusted)
+    {
+        double[] noises = [.. Enumerable.Range(0, _n).Where(i => trusted[i]).Select(i => powers.ChannelNoise[i]).Order()];
+        return noises[noises.Length / 2];
     }
 
     private void Fill(
@@ -68,7 +85,7 @@ internal sealed class ChannelPrediction
         double gainPower = crossPower / (predicted * predicted);
         e.LogGain[i] = (0.5 * Math.Log(Math.Max(gainPower, 1e-20))) + (0.5 * Math.Log(ownPower));
         e.Phase[i] = (gain * own).Phase;
-        e.StandardError[i] = level > 0 ? Math.Min(10, Math.Sqrt(remains / (2 * e.Snapshots * predicted * Math.Max(gainPower, 1e-12)))) : 10;
+        e.StandardError[i] = level > 0 ? Math.Min(10, Math.Sqrt(remains / (2 * e.Snapshots[i] * predicted * Math.Max(gainPower, 1e-12)))) : 10;
         e.Coherence[i] = level > 0 ? Math.Min(1, crossPower / (predicted * level)) : 0;
         double healthy = predicted + unpredicted;
         e.ExpectedCoherence[i] = predicted / healthy;

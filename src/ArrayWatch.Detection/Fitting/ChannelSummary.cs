@@ -29,9 +29,9 @@ internal sealed class ChannelSummary
         LevelRatioDecibels = ApertureTrend.Median([.. ratios]);
         foreach (BinEvidence b in usable)
         {
-            kept += b.Snapshots * Math.Max(0, b.Coherence[index] - (1 / b.Snapshots));
-            expected += b.Snapshots * b.ExpectedCoherence[index];
-            snapshots += b.Snapshots;
+            kept += b.Snapshots[index] * Math.Max(0, b.Coherence[index] - (1 / b.Snapshots[index]));
+            expected += b.Snapshots[index] * b.ExpectedCoherence[index];
+            snapshots += b.Snapshots[index];
         }
 
         Snapshots = usable.Length > 0 ? snapshots / usable.Length : 0;
@@ -46,7 +46,7 @@ internal sealed class ChannelSummary
         ModelError = seen.Length > 0 ? ApertureTrend.Median([.. seen.Select(b => b.PhaseFloor)]) : 0.2;
         double gain = IsVisible ? DecibelsPerNeper * GainNepers : 0;
         (ExcessDecibels, ExcessError) = Robust(
-            [.. ratios.Select(r => r - gain)], [.. usable.Select(b => DecibelsPerNeper / 2 * Combine(1.4 / Math.Sqrt(Math.Max(b.Snapshots, 1)), 0.1))]);
+            [.. ratios.Select(r => r - gain)], [.. usable.Select(b => DecibelsPerNeper / 2 * Combine(1.4 / Math.Sqrt(Math.Max(b.Snapshots[index], 1)), 0.1))]);
         Deviation = Largest(tolerances);
     }
 

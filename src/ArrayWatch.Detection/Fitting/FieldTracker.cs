@@ -18,6 +18,10 @@ internal sealed class FieldTracker
     private const int MostPasses = 8;
     private const double Leaves = 1.0;
     private const double Returns = 0.8;
+    private const double LeastRecent = 12;
+
+    // Two plane waves make this much of any arrival that the grid may have missed.
+    private const double ExplainedByWaves = 0.85;
 
     private readonly ArrayGeometry _geometry;
     private readonly ArrayShape _shape;
@@ -28,6 +32,9 @@ internal sealed class FieldTracker
     private readonly ComplexMatrix _raw;
     private BinTracker[] _bins = [];
     private double _soundSpeed;
+    private double _threshold;
+    private double _thresholdSnapshots;
+    private int _thresholdChannels;
 
     public FieldTracker(ArrayGeometry geometry, IReadOnlyList<IFieldComponent> components, Tolerances tolerances)
     {
@@ -52,7 +59,8 @@ internal sealed class FieldTracker
 
     /// <summary>Fits everything to <paramref name="estimate"/>.</summary>
     /// <returns>False when the data allow no fit.</returns>
-    public bool TryUpdate(ExponentialCovariance estimate, IReadOnlyList<double> frequencies, double soundSpeed, IReadOnlySet<int> outOfService)
+    public bool TryUpdate(
+        ExponentialCovariance estimate, ExponentialCovariance recent, IReadOnlyList<double> frequencies, double soundSpeed, IReadOnlySet<int> outOfService)
     {
         bool first = Prepare(frequencies, soundSpeed);
         double snapshots = estimate.DegreesOfFreedom;
@@ -62,11 +70,35 @@ internal sealed class FieldTracker
         for (int pass = 0; pass < MostPasses; pass++)
         {
             if (!FitBins(estimate, soundSpeed, snapshots, first && pass == 0 ? 4 : 2)) return false;
-            Summaries = [.. Enumerable.Range(0, _geometry.Count).Select(i => new ChannelSummary(i, [.. _bins.Select(b => b.Evidence)], _tolerances))];
+            Summaries = [.. Enumerable.Range(0, _geometry.Count).Select(Summarise)];
             if (!Settle(outOfService, left)) break;
         }
 
+        if (recent.DegreesOfFreedom >= LeastRecent) JudgeOthersBy(recent);
         return true;
+    }
+
+    private ChannelSummary Summarise(int channel) => new(channel, [.. _bins.Select(b => b.Evidence)], _tolerances);
+
+    // What a channel does now shows in the recent memory, without the mixture of before and after that the fast one still holds.
+    private void JudgeOthersBy(ExponentialCovariance recent)
+    {
+        if (Array.TrueForAll(Trusted, t => t)) return;
+        ChannelPrediction prediction = new(_work);
+        foreach (var (bin, f) in _bins.Select((b, f) => (b, f)))
+        {
+            if (!bin.Evidence.Usable) continue;
+            recent.CopyBin(f, _raw);
+            bin.Powers!.WriteField(_work.Field);
+            bin.HideForeign(_work, _raw, Trusted);
+            prediction.EvaluateOthers(bin, Trusted, recent.DegreesOfFreedom, bin.Evidence);
+            ApertureTrend.RemoveFromOthers(bin.Evidence);
+        }
+
+        for (int i = 0; i < Trusted.Length; i++)
+        {
+            if (!Trusted[i]) Summaries[i] = Summarise(i);
+        }
     }
 
     private bool Prepare(IReadOnlyList<double> frequencies, double soundSpeed)
@@ -122,7 +154,9 @@ internal sealed class FieldTracker
             if (_shape.Dimensions >= 2) (hints, spacing) = (bin.Powers!.ActiveDirections(0.03, 8), bin.Powers.Basis.Spacing);
             SearchForeign(bin, snapshots);
             prediction.Evaluate(bin, Trusted, snapshots, bin.Evidence);
+            prediction.EvaluateOthers(bin, Trusted, snapshots, bin.Evidence);
             _trend.Remove(bin.Evidence, Trusted);
+            ApertureTrend.RemoveFromOthers(bin.Evidence);
             bin.Evidence.Misfit = Misfit(bin.Powers!);
         }
 
@@ -142,10 +176,11 @@ internal sealed class FieldTracker
         double eigenvalue = search.Search(bin.Powers!, Trusted);
         bin.Evidence.LargestEigenvalue = eigenvalue;
         double usual = ApertureTrend.Median([.. _bins.Where(b => b != bin && b.Evidence.LargestEigenvalue > 0).Select(b => b.Evidence.LargestEigenvalue)]);
-        double threshold = 1.6 * LargestEigenvalue.Threshold(trusted, Math.Max(snapshots, 2), 1e-6);
-        bool foreign = eigenvalue > Math.Max(threshold, 2.5 * usual) && search.WaveShare < 0.85;
+        double threshold = 1.6 * Threshold(trusted, Math.Max(snapshots, 2));
+        double waves = 1;
+        if (eigenvalue > Math.Max(threshold, 2.5 * usual)) waves = search.ShareOfWaves(bin.Powers!.Basis, Trusted);
         bin.Evidence.Foreign = null;
-        if (!foreign)
+        if (waves >= ExplainedByWaves)
         {
             if (had) bin.SetForeign([]);
             return;
@@ -156,8 +191,16 @@ internal sealed class FieldTracker
         double[] power = [.. pattern.Select(p => (p.Real * p.Real) + (p.Imaginary * p.Imaginary))];
         int n = _geometry.Count;
         bin.Evidence.Foreign = new ForeignPattern(
-            bin.Frequency, eigenvalue, search.WaveShare, power, [.. power.Select((p, i) => p / Math.Max(_work.Field.Re[(i * n) + i], 1e-300))]);
+            bin.Frequency, eigenvalue, waves, power, [.. power.Select((p, i) => p / Math.Max(_work.Field.Re[(i * n) + i], 1e-300))]);
         bin.HideForeign(_work, _raw, Trusted);
+    }
+
+    // The exact threshold takes milliseconds, and hardly moves with ν.
+    private double Threshold(int channels, double snapshots)
+    {
+        if (channels == _thresholdChannels && Math.Abs(snapshots - _thresholdSnapshots) < 0.1 * _thresholdSnapshots) return _threshold;
+        (_thresholdChannels, _thresholdSnapshots) = (channels, snapshots);
+        return _threshold = LargestEigenvalue.Threshold(channels, snapshots, 1e-6);
     }
 
     private double Misfit(FieldPowers powers)

@@ -1,4 +1,5 @@
 using System.Numerics;
+using System.Runtime.InteropServices;
 using ArrayWatch.NoiseField.Fitting;
 using ArrayWatch.Signals.LinearAlgebra;
 
@@ -26,8 +27,6 @@ internal sealed class ForeignSearch
     /// <summary>Pattern of the last search at every channel, in the units of the data with gains taken out.</summary>
     public Complex[] Pattern { get; private set; } = [];
 
-    /// <summary>Share of the last pattern that the best waves explain.</summary>
-    public double WaveShare { get; private set; }
 
     /// <summary>Finds the largest eigenvalue, and its pattern.</summary>
     public double Search(FieldPowers powers, bool[] trusted)
@@ -68,12 +67,13 @@ internal sealed class ForeignSearch
         }
 
         Pattern = pattern;
-        WaveShare = ShareOfWaves(powers.Basis, pattern, trusted);
         return eigenvalue;
     }
 
-    private double ShareOfWaves(FieldBasis basis, Complex[] pattern, bool[] trusted)
+    /// <summary>Share of the last pattern that the best waves explain, 0 to 1, in the whitened metric.</summary>
+    public double ShareOfWaves(FieldBasis basis, bool[] trusted)
     {
+        Complex[] pattern = Pattern;
         Complex[] a = [.. pattern.Select((p, i) => trusted[i] ? p : Complex.Zero)];
         double total = Form(a, Times(_work.Weight, a));
         if (!(total > 0) || basis.Directions.Length == 0) return 0;
@@ -81,11 +81,11 @@ internal sealed class ForeignSearch
         List<Complex[]> chosen = [];
         Complex[] residual = a;
         double explained = 0;
+        double[] cost = new double[q];
+        Products.QuadraticForms(basis.Waves, _work.Weight, cost);
         for (int k = 0; k < MostWaves; k++)
         {
             Complex[] weighted = Times(_work.Weight, residual);
-            double[] cost = new double[q];
-            Products.QuadraticForms(basis.Waves, _work.Weight, cost);
             int best = 0;
             double most = -1;
             for (int w = 0; w < q; w++)
@@ -123,22 +123,27 @@ internal sealed class ForeignSearch
 
     private Complex[] Times(ComplexMatrix m, Complex[] z, bool[]? rows = null)
     {
+        double[] zr = new double[_n], zi = new double[_n];
+        for (int j = 0; j < _n; j++) (zr[j], zi[j]) = (z[j].Real, z[j].Imaginary);
         Complex[] result = new Complex[_n];
         for (int i = 0; i < _n; i++)
         {
             if (rows is not null && !rows[i]) continue;
-            double re = 0, im = 0;
-            for (int j = 0; j < _n; j++)
-            {
-                double a = m.Re[(i * _n) + j], b = m.Im[(i * _n) + j];
-                re += (a * z[j].Real) - (b * z[j].Imaginary);
-                im += (a * z[j].Imaginary) + (b * z[j].Real);
-            }
-
-            result[i] = new Complex(re, im);
+            ReadOnlySpan<double> mr = m.Re.AsSpan(i * _n, _n), mi = m.Im.AsSpan(i * _n, _n);
+            result[i] = new Complex(Dot(mr, zr) - Dot(mi, zi), Dot(mr, zi) + Dot(mi, zr));
         }
 
         return result;
+    }
+
+    private static double Dot(ReadOnlySpan<double> a, ReadOnlySpan<double> b)
+    {
+        ReadOnlySpan<Vector<double>> va = MemoryMarshal.Cast<double, Vector<double>>(a), vb = MemoryMarshal.Cast<double, Vector<double>>(b);
+        Vector<double> sum = default;
+        for (int i = 0; i < va.Length; i++) sum += va[i] * vb[i];
+        double total = Vector.Sum(sum);
+        for (int i = va.Length * Vector<double>.Count; i < a.Length; i++) total += a[i] * b[i];
+        return total;
     }
 
     private static double Form(Complex[] a, Complex[] b) => Inner(a, b).Real;

@@ -30,6 +30,9 @@ internal sealed class PhaseFit
     // A law with one more unknown must earn this much, in nats; with two unknowns twice.
     private const double PriceOfUnknown = 4;
 
+    // Half a sum of squares this far above its mean is no surprise.
+    private const double Quiet = 6;
+
     private readonly double[] _frequencies;
     private readonly double[] _phases;
     private readonly double[] _errors;
@@ -50,10 +53,21 @@ internal sealed class PhaseFit
         ConstantRadians = Refine(Start(0), 0, Unknowns.Constant).Constant;
         CostConstant = Cost(ConstantRadians, 0);
         ConstantError = 1 / Math.Sqrt(Math.Max(weight, 1e-12));
-        (DelaySeconds, CostDelay) = BestDelay(constant: false, out _);
         DelayError = 1 / Math.Sqrt(Math.Max(weightedSquare, 1e-12));
-        (double tau, CostBoth) = BestDelay(constant: true, out double both);
-        (BothConstant, BothDelay) = (both, tau);
+        if (CostNone < phases.Length + Quiet)
+        {
+            // Nothing to explain: a small delay is found from zero, without a search.
+            DelaySeconds = Refine(0, 0, Unknowns.Delay).Delay;
+            CostDelay = Cost(0, DelaySeconds);
+            (BothConstant, BothDelay, CostBoth) = (0, DelaySeconds, CostDelay);
+        }
+        else
+        {
+            (DelaySeconds, CostDelay) = BestDelay(constant: false, out _);
+            (double tau, CostBoth) = BestDelay(constant: true, out double both);
+            (BothConstant, BothDelay) = (both, tau);
+        }
+
         Law = Choose();
     }
 

@@ -11,6 +11,9 @@ internal sealed class PlaceTable(int[] channels)
     /// <summary>The untrusted channels.</summary>
     public int[] Channels { get; } = channels;
 
+    /// <summary>Effective snapshots, ν, of the data.</summary>
+    public double Snapshots { get; set; }
+
     /// <summary>E[x_n y_m*]: data of channel n (row), prediction at the place of channel m (column).</summary>
     public Complex[,] Cross { get; } = new Complex[channels.Length, channels.Length];
 

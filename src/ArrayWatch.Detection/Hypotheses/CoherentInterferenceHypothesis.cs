@@ -33,7 +33,7 @@ internal sealed class CoherentInterferenceHypothesis : IFaultHypothesis
         int[] carriers = [.. Enumerable.Range(0, n).Where(i =>
             !scene.IsClaimed(i) && !scene.OutOfService.Contains(i) && relative[i] > LeastShare && relative[i] > WithinOfMost * most)];
         if (carriers.Length < 3) return;
-        double snapshots = scene.Bins[0].Snapshots;
+        double snapshots = scene.Bins[0].Snapshots.Max();
         double nats = patterns.Sum(p => snapshots * (p.Eigenvalue - 1 - Math.Log(p.Eigenvalue))) / 4;
         scene.Add(new Candidate
         {

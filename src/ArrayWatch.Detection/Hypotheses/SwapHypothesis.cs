@@ -17,8 +17,8 @@ internal sealed class SwapHypothesis : IFaultHypothesis
     private const double SimplerNats = 8;
     private const double SimplerShare = 0.02;
 
-    // Moved data must fit the new place about as well as a healthy channel's fit their own.
-    private const double WorstResidual = 3;
+    // Moved data must have at least this share of the coherence that a healthy channel has with the prediction at its place.
+    private const double LeastCoherenceKept = 0.5;
 
     public void Propose(DecisionScene scene)
     {
@@ -28,14 +28,15 @@ internal sealed class SwapHypothesis : IFaultHypothesis
         int[] places = bins[0].Places!.Channels;
         int[] rows = [.. suspects.Select(s => Array.IndexOf(places, s.Index)).Where(r => r >= 0)];
         if (rows.Length < 2) return;
-        double bonus = SimplerNats + (SimplerShare * bins.Sum(b => b.Snapshots));
+        double bonus = SimplerNats + (SimplerShare * bins.Sum(b => b.Places!.Snapshots));
         double[,] score = new double[rows.Length, rows.Length];
         double[] healthy = new double[rows.Length], own = new double[rows.Length];
         for (int a = 0; a < rows.Length; a++)
         {
             for (int b = 0; b < rows.Length; b++) score[a, b] = Likelihood(bins, rows[a], rows[b], null);
             healthy[a] = score[a, a];
-            own[a] = Math.Max(score[a, a], Likelihood(bins, rows[a], rows[a], scene.Summaries[places[rows[a]]]));
+            double silent = -bins.Sum(b => b.Places!.Snapshots * Math.Log(b.Places.Level[rows[a]] + double.Epsilon));
+            own[a] = Math.Max(Math.Max(score[a, a], silent), Likelihood(bins, rows[a], rows[a], scene.Summaries[places[rows[a]]]));
             score[a, a] = own[a] - bonus;
         }
 
@@ -61,9 +62,8 @@ internal sealed class SwapHypothesis : IFaultHypothesis
     {
         double moved = cycle.Sum(k => score[k, assignment[k]]);
         double nats = moved - cycle.Sum(k => healthy[k]);
-        double residual = cycle.Max(k => bins.Average(b =>
-            b.Places!.Residual(rows[k], rows[assignment[k]], Complex.One, 0) / b.Places.Unpredicted[rows[assignment[k]]]));
-        if (nats <= 0 || residual > WorstResidual) return;
+        double kept = cycle.Min(k => CoherenceKept(bins, rows[k], rows[assignment[k]]));
+        if (nats <= 0 || kept < LeastCoherenceKept) return;
         Dictionary<int, int> mapping = cycle.ToDictionary(k => places[rows[k]], k => places[rows[assignment[k]]]);
         scene.Claim(new Candidate
         {
@@ -75,16 +75,29 @@ internal sealed class SwapHypothesis : IFaultHypothesis
             {
                 ["against no fault, nats"] = nats,
                 ["against phases, delays and gains, nats"] = moved - cycle.Sum(k => own[k]),
-                ["residual at the new places, healthy = 1"] = residual,
+                ["share of expected coherence kept at the new places"] = kept,
             },
         });
+    }
+
+    private static double CoherenceKept(BinEvidence[] bins, int row, int column)
+    {
+        double kept = 0, expected = 0;
+        foreach (PlaceTable t in bins.Select(b => b.Places!))
+        {
+            Complex cross = t.Cross[row, column];
+            kept += ((cross.Real * cross.Real) + (cross.Imaginary * cross.Imaginary)) / ((t.Level[row] * t.Predicted[column]) + double.Epsilon);
+            expected += t.Predicted[column] / (t.Predicted[column] + t.Unpredicted[column]);
+        }
+
+        return expected > 0 ? kept / expected : 0;
     }
 
     // Profile log-likelihood over the residual power: Σ −ν ln r.
     private static double Likelihood(BinEvidence[] bins, int row, int column, ChannelSummary? law)
     {
         double sum = 0;
-        foreach (BinEvidence b in bins) sum -= b.Snapshots * Math.Log(b.Places!.Residual(row, column, law is null ? Complex.One : Response(law, b.Frequency), Caution));
+        foreach (BinEvidence b in bins) sum -= b.Places!.Snapshots * Math.Log(b.Places!.Residual(row, column, law is null ? Complex.One : Response(law, b.Frequency), Caution));
         return sum;
     }
 

@@ -1,3 +1,6 @@
+using System.Numerics;
+using System.Runtime.InteropServices;
+
 namespace ArrayWatch.NoiseField.Fitting;
 
 /// <summary>
@@ -42,10 +45,19 @@ public static class NonNegativeLeastSquares
                 worst = Math.Max(worst, Math.Abs(step) * diagonal);
                 x[i] = next;
                 ReadOnlySpan<double> row = gram.Slice(i * n, n);
-                for (int j = 0; j < n; j++) gradient[j] += step * row[j];
+                AddScaled(gradient, row, step);
             }
 
             if (worst <= tolerance * scale) return;
         }
+    }
+
+    private static void AddScaled(Span<double> to, ReadOnlySpan<double> from, double factor)
+    {
+        Span<Vector<double>> vt = MemoryMarshal.Cast<double, Vector<double>>(to);
+        ReadOnlySpan<Vector<double>> vf = MemoryMarshal.Cast<double, Vector<double>>(from);
+        Vector<double> f = new(factor);
+        for (int i = 0; i < vt.Length; i++) vt[i] += vf[i] * f;
+        for (int i = vt.Length * Vector<double>.Count; i < to.Length; i++) to[i] += factor * from[i];
     }
 }

@@ -25,6 +25,9 @@ public sealed class WeightedMatching
     // Forty decibels below the channel's own level: keeps R invertible, and is below any real self-noise that matters.
     private const double LeastNoise = 1e-4;
 
+    // Waves that may join at one step: the steepest; others join at the next.
+    private const int NewWaves = 16;
+
     private readonly FitWorkspace _work;
 
     /// <summary>Works in the given matrices.</summary>
@@ -130,13 +133,9 @@ public sealed class WeightedMatching
         Products.QuadraticForms(powers.Basis.Waves, _work.WeightDataWeight, gain);
         Products.QuadraticForms(powers.Basis.Waves, _work.Weight, cost);
         double least = 1e-6 * powers.FieldPower;
-        int room = Math.Max(16, powers.Basis.Channels);
         HashSet<int> chosen = [.. Enumerable.Range(0, q).Where(i => powers.Waves[i] > least)];
-        foreach (int i in Enumerable.Range(0, q).Where(i => gain[i] > cost[i]).OrderByDescending(i => gain[i] / cost[i]))
-        {
-            if (chosen.Count >= 2 * room) break;
+        foreach (int i in Enumerable.Range(0, q).Where(i => gain[i] > cost[i] && !chosen.Contains(i)).OrderByDescending(i => gain[i] / cost[i]).Take(NewWaves))
             chosen.Add(i);
-        }
 
         return [.. chosen.Order()];
     }
