@@ -83,7 +83,7 @@ public sealed class ArrayDiagnosis
             OutOfService = input.OutOfService,
         };
         foreach (IFaultHypothesis hypothesis in FaultHypotheses.All) hypothesis.Propose(scene);
-        _ledger.Take(scene.Candidates, elapsed, c => Onset(c, input.TimeSeconds), ready && understood);
+        _ledger.Take(GroupRule.Apply(scene.Candidates, _geometry), elapsed, c => Onset(c, input.TimeSeconds), ready && understood);
         Finding[] findings = [.. _ledger.Standing.Select(ToFinding)];
         ChannelCorrection[] corrections = CorrectionBuilder.Corrections(findings, _tracker.Summaries, bins, input.OutOfService);
         return new Diagnosis
@@ -155,6 +155,7 @@ public sealed class ArrayDiagnosis
     {
         Kind = entry.Latest.Kind,
         Indices = entry.Latest.Indices,
+        Group = entry.Latest.Group,
         OnsetSeconds = entry.OnsetSeconds,
         Confidence = 1 - Math.Exp(-Math.Min(entry.Nats, 30)),
         Estimate = entry.Latest.Estimate,

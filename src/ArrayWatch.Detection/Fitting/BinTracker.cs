@@ -15,8 +15,6 @@ internal sealed class BinTracker
     private readonly double[] _logGain;
     private readonly double[] _phase;
     private FieldPowers? _powers;
-    private double[] _foreignRe = [];
-    private double[] _foreignIm = [];
 
     public BinTracker(ArrayGeometry geometry, double frequency)
     {
@@ -83,27 +81,8 @@ internal sealed class BinTracker
         return matching.TryFit(powers, trusted, 1);
     }
 
-    /// <summary>True while a pattern is taken out of the data before the field is fitted.</summary>
-    public bool HasForeign => _foreignRe.Length > 0;
-
-    /// <summary>Sets the pattern that is taken out of the data before the field is fitted; empty for none.</summary>
-    public void SetForeign(ReadOnlySpan<Complex> pattern)
-    {
-        _foreignRe = [.. pattern.ToArray().Select(p => p.Real)];
-        _foreignIm = [.. pattern.ToArray().Select(p => p.Imaginary)];
-    }
-
-    /// <summary>Puts the pattern back into the fitted workspace's data.</summary>
-    public void ShowForeign(FitWorkspace work, ComplexMatrix raw, bool[] trusted)
-    {
-        (double[] re, double[] im) = (_foreignRe, _foreignIm);
-        (_foreignRe, _foreignIm) = ([], []);
-        HideForeign(work, raw, trusted);
-        (_foreignRe, _foreignIm) = (re, im);
-    }
-
-    /// <summary>Brings the workspace's data to the present pattern, the field being fitted.</summary>
-    public void HideForeign(FitWorkspace work, ComplexMatrix raw, bool[] trusted)
+    /// <summary>Puts newer data into the fitted workspace, the field staying as it is.</summary>
+    public void Load(FitWorkspace work, ComplexMatrix raw, bool[] trusted)
     {
         TakeOutGains(raw, work.Data);
         TrustedInverse.TryUpdate(work, _powers!.ChannelNoise, trusted);
@@ -124,26 +103,16 @@ internal sealed class BinTracker
             (re[i], im[i]) = (a * c, a * s);
         }
 
-        bool foreign = _foreignRe.Length == n;
         for (int i = 0; i < n; i++)
         {
             for (int j = 0; j < n; j++)
             {
                 int at = (i * n) + j;
                 double sr = raw.Re[at], si = raw.Im[at];
-                if (foreign)
-                {
-                    sr -= (_foreignRe[i] * _foreignRe[j]) + (_foreignIm[i] * _foreignIm[j]);
-                    si -= (_foreignIm[i] * _foreignRe[j]) - (_foreignRe[i] * _foreignIm[j]);
-                }
-
                 double gr = (re[i] * re[j]) + (im[i] * im[j]), gi = (im[i] * re[j]) - (re[i] * im[j]);
                 data.Re[at] = (sr * gr) - (si * gi);
                 data.Im[at] = (sr * gi) + (si * gr);
             }
-
-            // What a pattern takes out must leave some power: its estimate has an error of its own.
-            if (foreign) data.Re[(i * n) + i] = Math.Max(data.Re[(i * n) + i], 0.02 * raw.Re[(i * n) + i] * ((re[i] * re[i]) + (im[i] * im[i])));
         }
     }
 

@@ -41,8 +41,11 @@ internal sealed class ChannelSummary
         IsVisible = ExpectedCoherence > LeastVisible && seen.Length > 0 && seen.Length >= 0.3 * usable.Length;
         double[] errors = [.. seen.Select(b => Combine(b.StandardError[index], b.PhaseFloor))];
         Phase = new PhaseFit([.. seen.Select(b => b.Frequency)], [.. seen.Select(b => b.Phase[index])], errors);
-        (GainNepers, GainError) = Robust(
-            [.. seen.Select(b => b.LogGain[index])], [.. seen.Select(b => Combine(b.StandardError[index], b.LogGainFloor))]);
+        (double amplitude, double amplitudeError) = Robust(
+            [.. seen.Select(b => Math.Exp(b.LogGain[index]) * Math.Cos(b.Phase[index] - Phase.At(b.Frequency)))],
+            [.. seen.Select(b => Math.Exp(b.LogGain[index]) * Combine(b.StandardError[index], b.LogGainFloor))]);
+        amplitude = Math.Max(amplitude, 1e-4);
+        (GainNepers, GainError) = (Math.Log(amplitude), amplitudeError / amplitude);
         ModelError = seen.Length > 0 ? ApertureTrend.Median([.. seen.Select(b => b.PhaseFloor)]) : 0.2;
         double gain = IsVisible ? DecibelsPerNeper * GainNepers : 0;
         (ExcessDecibels, ExcessError) = Robust(

@@ -20,7 +20,7 @@ internal sealed class FieldTracker
     private const double Returns = 0.8;
     private const double LeastRecent = 12;
 
-    // Two plane waves make this much of any arrival that the grid may have missed.
+    // One or two plane waves make this much of any arrival that the grid may have missed.
     private const double ExplainedByWaves = 0.85;
 
     private readonly ArrayGeometry _geometry;
@@ -90,7 +90,7 @@ internal sealed class FieldTracker
             if (!bin.Evidence.Usable) continue;
             recent.CopyBin(f, _raw);
             bin.Powers!.WriteField(_work.Field);
-            bin.HideForeign(_work, _raw, Trusted);
+            bin.Load(_work, _raw, Trusted);
             prediction.EvaluateOthers(bin, Trusted, recent.DegreesOfFreedom, bin.Evidence);
             ApertureTrend.RemoveFromOthers(bin.Evidence);
         }
@@ -170,29 +170,18 @@ internal sealed class FieldTracker
     private void SearchForeign(BinTracker bin, double snapshots)
     {
         ForeignSearch search = new(_work);
-        bool had = bin.HasForeign;
-        if (had) bin.ShowForeign(_work, _raw, Trusted);
-        int trusted = Trusted.Count(t => t);
         double eigenvalue = search.Search(bin.Powers!, Trusted);
         bin.Evidence.LargestEigenvalue = eigenvalue;
-        double usual = ApertureTrend.Median([.. _bins.Where(b => b != bin && b.Evidence.LargestEigenvalue > 0).Select(b => b.Evidence.LargestEigenvalue)]);
-        double threshold = 1.6 * Threshold(trusted, Math.Max(snapshots, 2));
-        double waves = 1;
-        if (eigenvalue > Math.Max(threshold, 2.5 * usual)) waves = search.ShareOfWaves(bin.Powers!.Basis, Trusted);
         bin.Evidence.Foreign = null;
-        if (waves >= ExplainedByWaves)
-        {
-            if (had) bin.SetForeign([]);
-            return;
-        }
-
-        Complex[] pattern = bin.GivePattern(search.Pattern);
-        bin.SetForeign(pattern);
-        double[] power = [.. pattern.Select(p => (p.Real * p.Real) + (p.Imaginary * p.Imaginary))];
+        double usual = ApertureTrend.Median([.. _bins.Where(b => b != bin && b.Evidence.LargestEigenvalue > 0).Select(b => b.Evidence.LargestEigenvalue)]);
+        double threshold = 1.6 * Threshold(Trusted.Count(t => t), Math.Max(snapshots, 2));
+        if (eigenvalue <= Math.Max(threshold, 2.5 * usual)) return;
+        double waves = search.ShareOfWaves(bin.Powers!.Basis, Trusted);
+        if (waves >= ExplainedByWaves) return;
+        double[] power = [.. bin.GivePattern(search.Pattern).Select(p => (p.Real * p.Real) + (p.Imaginary * p.Imaginary))];
         int n = _geometry.Count;
         bin.Evidence.Foreign = new ForeignPattern(
             bin.Frequency, eigenvalue, waves, power, [.. power.Select((p, i) => p / Math.Max(_work.Field.Re[(i * n) + i], 1e-300))]);
-        bin.HideForeign(_work, _raw, Trusted);
     }
 
     // The exact threshold takes milliseconds, and hardly moves with ν.

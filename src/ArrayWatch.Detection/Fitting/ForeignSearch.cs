@@ -13,7 +13,9 @@ namespace ArrayWatch.Detection.Fitting;
 internal sealed class ForeignSearch
 {
     private const int PowerSteps = 40;
-    private const int MostWaves = 2;
+
+    // Of a dozen channels any pattern is two waves or so: only larger arrays can tell two correlated paths from a foreign pattern.
+    private const int ChannelsForTwoWaves = 16;
 
     private readonly FitWorkspace _work;
     private readonly int _n;
@@ -83,7 +85,8 @@ internal sealed class ForeignSearch
         double explained = 0;
         double[] cost = new double[q];
         Products.QuadraticForms(basis.Waves, _work.Weight, cost);
-        for (int k = 0; k < MostWaves; k++)
+        int waves = trusted.Count(t => t) >= ChannelsForTwoWaves ? 2 : 1;
+        for (int k = 0; k < waves; k++)
         {
             Complex[] weighted = Times(_work.Weight, residual);
             int best = 0;

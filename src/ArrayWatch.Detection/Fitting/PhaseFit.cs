@@ -97,6 +97,20 @@ internal sealed class PhaseFit
 
     public PhaseLaw Law { get; }
 
+    /// <summary>Phase of the chosen law at a frequency, radians.</summary>
+    public double At(double frequency)
+    {
+        (double constant, double delay) = Law switch
+        {
+            PhaseLaw.Reversed => (Math.PI, 0.0),
+            PhaseLaw.Constant => (ConstantRadians, 0.0),
+            PhaseLaw.Delay => (0.0, DelaySeconds),
+            PhaseLaw.Both => (BothConstant, BothDelay),
+            _ => (0.0, 0.0),
+        };
+        return constant - (2 * Math.PI * frequency * delay);
+    }
+
     private enum Unknowns
     {
         Constant,

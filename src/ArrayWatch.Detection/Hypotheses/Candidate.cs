@@ -23,6 +23,9 @@ internal sealed record Candidate
 
     public string? Cause { get; init; }
 
+    /// <summary>The module whose channels failed together; null for none.</summary>
+    public string? Group { get; init; }
+
     /// <summary>Tells this fault from others of its kind over time; the channels unless the kind says otherwise.</summary>
     public string? Identity { get; init; }
 

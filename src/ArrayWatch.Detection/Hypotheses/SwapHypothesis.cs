@@ -97,20 +97,7 @@ internal sealed class SwapHypothesis : IFaultHypothesis
     private static double Likelihood(BinEvidence[] bins, int row, int column, ChannelSummary? law)
     {
         double sum = 0;
-        foreach (BinEvidence b in bins) sum -= b.Places!.Snapshots * Math.Log(b.Places!.Residual(row, column, law is null ? Complex.One : Response(law, b.Frequency), Caution));
+        foreach (BinEvidence b in bins) sum -= b.Places!.Snapshots * Math.Log(b.Places!.Residual(row, column, law is null ? Complex.One : Complex.FromPolarCoordinates(Math.Exp(law.GainNepers), law.Phase.At(b.Frequency)), Caution));
         return sum;
-    }
-
-    private static Complex Response(ChannelSummary s, double frequency)
-    {
-        (double constant, double delay) = s.Phase.Law switch
-        {
-            PhaseLaw.Constant => (s.Phase.ConstantRadians, 0.0),
-            PhaseLaw.Delay => (0.0, s.Phase.DelaySeconds),
-            PhaseLaw.Reversed => (Math.PI, 0.0),
-            PhaseLaw.Both => (s.Phase.BothConstant, s.Phase.BothDelay),
-            _ => (0.0, 0.0),
-        };
-        return Complex.FromPolarCoordinates(Math.Exp(s.GainNepers), constant - (2 * Math.PI * frequency * delay));
     }
 }
