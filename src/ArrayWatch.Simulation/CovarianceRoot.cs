@@ -4,12 +4,13 @@ namespace ArrayWatch.Simulation;
 
 /// <summary>
 /// A lower-triangular L with L Lᴴ = R for a positive semidefinite R, to draw Gaussian vectors of that
-/// covariance. Directions whose power is below 10⁻¹⁰ of the largest are dropped: at low frequency a
-/// diffuse field has far fewer of them than there are sensors.
+/// covariance. Seventy decibels below the power a little noise is added: at low frequency a diffuse field has far
+/// fewer directions than there are sensors, and without it rounding grows along the factor until the last sensors are wrong
+/// by decibels.
 /// </summary>
 internal sealed class CovarianceRoot
 {
-    private const double RelativeFloor = 1e-10;
+    private const double RelativeFloor = 1e-7;
     private readonly int _n;
     private readonly double[] _re;
     private readonly double[] _im;
@@ -21,7 +22,8 @@ internal sealed class CovarianceRoot
         _im = (double[])covariance.Im.Clone();
         double largest = 0;
         for (int i = 0; i < _n; i++) largest = Math.Max(largest, _re[(i * _n) + i]);
-        for (int j = 0; j < _n; j++) FactorColumn(j, RelativeFloor * largest);
+        for (int i = 0; i < _n; i++) _re[(i * _n) + i] += RelativeFloor * largest;
+        for (int j = 0; j < _n; j++) FactorColumn(j);
     }
 
     /// <summary>Adds L z to the planes for a standard complex Gaussian z, scaled by <paramref name="amplitude"/>.</summary>
@@ -44,11 +46,11 @@ internal sealed class CovarianceRoot
         }
     }
 
-    private void FactorColumn(int j, double floor)
+    private void FactorColumn(int j)
     {
         double d = _re[(j * _n) + j];
         for (int k = 0; k < j; k++) d -= Square(j, k);
-        double root = d > floor ? Math.Sqrt(d) : 0;
+        double root = Math.Sqrt(Math.Max(d, 0));
         _re[(j * _n) + j] = root;
         _im[(j * _n) + j] = 0;
         for (int i = j + 1; i < _n; i++)

@@ -14,9 +14,10 @@ namespace ArrayWatch.NoiseField.Fitting;
 /// </remarks>
 public sealed class CalibrationStep
 {
-    // Spread of healthy channels against each other: what a user's default tolerances (3 dB, 15°) call two standard deviations.
-    private const double LogGainSpread = 0.17;
-    private const double PhaseSpread = 0.13;
+    // Spread of healthy channels against each other, 0.4 dB and 3°. Wider ones let gains explain what the sample correlation of two
+    // strong arrivals is to blame for, smoothly along the line: measured.
+    private const double LogGainSpread = 0.05;
+    private const double PhaseSpread = 0.05;
 
     // A longer step would leave the region where the likelihood is near its quadratic.
     private const double LongestStep = 0.5;

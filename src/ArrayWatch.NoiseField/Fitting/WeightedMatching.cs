@@ -22,8 +22,12 @@ namespace ArrayWatch.NoiseField.Fitting;
 /// </remarks>
 public sealed class WeightedMatching
 {
-    // Forty decibels below the channel's own level: keeps R invertible, and is below any real self-noise that matters.
-    private const double LeastNoise = 1e-4;
+    // Thirty decibels below the level: no model of a field is right beyond that.
+    private const double LeastNoise = 1e-3;
+
+    // A channel is not much quieter than its fellows: noise that collapses at a few channels gives them all the weight,
+    // and the fit settles where their sampling errors are explained.
+    private const double LeastOfUsual = 0.2;
 
     // Waves that may join at one step: the steepest; others join at the next.
     private const int NewWaves = 16;
@@ -111,7 +115,10 @@ public sealed class WeightedMatching
         Array.Clear(powers.Waves);
         for (int a = 0; a < w; a++) powers.Waves[waves[a]] = x[a];
         for (int e = 0; e < d; e++) powers.Dense[e] = x[w + e];
-        for (int a = 0; a < noises.Length; a++) powers.ChannelNoise[noises[a]] = Math.Max(x[w + d + a], LeastNoise * power);
+        double[] own = x[(w + d)..];
+        Array.Sort(own);
+        double floor = Math.Max(LeastNoise * power, LeastOfUsual * own[own.Length / 2]);
+        for (int a = 0; a < noises.Length; a++) powers.ChannelNoise[noises[a]] = Math.Max(x[w + d + a], floor);
     }
 
     private static List<int> Indices(ReadOnlySpan<bool> trusted)
