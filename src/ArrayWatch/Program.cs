@@ -1,1 +1,3 @@
-return 0;
+using ArrayWatch.Commands;
+
+return await CommandLine.RunAsync(args);
