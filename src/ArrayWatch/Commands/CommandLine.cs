@@ -32,9 +32,9 @@ internal static class CommandLine
             Required = true,
         };
         Command demo = new("demo", "Shows two invented arrays in which one fault after another appears. Needs nothing else: broker, store and pages run in this process.");
-
+        demo.SetAction(static (_, cancellation) => DemoCommand.RunAsync(cancellation));
         Command run = new("run", "Runs the service until it is told to stop (SIGTERM or Ctrl-C).") { configuration };
-
+        run.SetAction((parsed, cancellation) => RunCommand.RunAsync(parsed.GetValue(configuration)!, cancellation));
         Command check = new("check", "Checks a configuration, prints every error at once, and otherwise what each array is like. Starts nothing.") { configuration };
         check.SetAction(parsed => CheckCommand.Run(parsed.GetValue(configuration)!, Console.Out, Console.Error));
         RootCommand root = new("ArrayWatch watches the channels of a sensor array: it takes snapshots from an MQTT broker, compares their covariance with the noise field's, and tells which channels are wrong, how, since when, and what to do.")

@@ -1,4 +1,5 @@
 using OpenTelemetry.Metrics;
+using OpenTelemetry.Resources;
 
 namespace ArrayWatch.Hosting;
 
@@ -11,7 +12,7 @@ internal static class Measurements
     /// <summary>Collects the meters of all parts and of the runtime.</summary>
     public static IServiceCollection AddMeasurements(this IServiceCollection services)
     {
-        services.AddOpenTelemetry().WithMetrics(static metrics => metrics
+        services.AddOpenTelemetry().ConfigureResource(static r => r.AddService("arraywatch")).WithMetrics(static metrics => metrics
             .AddMeter("ArrayWatch.*")
             .AddMeter("System.Runtime")
             .AddPrometheusExporter());
