@@ -20,7 +20,7 @@ internal static class Programme
         yield return "";
         yield return "What will go wrong, and when (minutes:seconds from now; each lasts a minute):";
         foreach ((DemoScene scene, Fault fault) in scenes.SelectMany(static s => s.Scene.Faults.Select(f => (s, f))).OrderBy(static p => p.f.StartSeconds).Take(FaultsTold))
-            yield return $"  {DemoClock.Text(fault.StartSeconds),5}  {scene.Id,-7} {fault.Kind} of {string.Join(", ", fault.Channels.Select(c => scene.Scene.Geometry.Channels[c].Label))}";
+            yield return $"  {DemoClock.OfScene(fault.StartSeconds),5}  {scene.Id,-7} {fault.Kind} of {string.Join(", ", fault.Channels.Select(c => scene.Scene.Geometry.Channels[c].Label))}";
         yield return "  and so on. An alert follows each within seconds to half a minute:";
         yield return "";
     }

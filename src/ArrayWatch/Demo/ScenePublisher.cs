@@ -26,7 +26,7 @@ internal sealed class ScenePublisher(IReadOnlyList<DemoScene> scenes, DemoClock 
 
     private async Task PlayAsync(DemoScene demo, CancellationToken stopping)
     {
-        Scene scene = demo.Scene with { StartTimeSeconds = clock.Started.ToUnixTimeMilliseconds() / 1000.0 };
+        Scene scene = demo.Scene with { StartTimeSeconds = clock.SceneStart.ToUnixTimeMilliseconds() / 1000.0 };
         SceneRunner runner = new(scene, new RandomNumbers(StartValue));
         float[] data = new float[runner.FrameLength];
         int[] shape = [scene.SnapshotsPerFrame, scene.Frequencies.Count, scene.Geometry.Count];
