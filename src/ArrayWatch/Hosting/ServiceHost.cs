@@ -3,6 +3,7 @@ using ArrayWatch.Commands;
 using ArrayWatch.Configuration;
 using ArrayWatch.Messaging;
 using ArrayWatch.Monitoring;
+using ArrayWatch.Web;
 using Microsoft.AspNetCore.Connections;
 
 namespace ArrayWatch.Hosting;
@@ -71,11 +72,13 @@ internal static class ServiceHost
         });
         builder.WebHost.UseUrls(url.ToString());
         Compose(builder, configuration);
+        builder.Services.AddPages();
         builder.Services.AddHealth();
         addMore?.Invoke(builder.Services);
         WebApplication app = builder.Build();
         app.MapHealth();
         app.MapOpenMetrics();
+        app.MapPages();
         return app;
     }
 

@@ -38,7 +38,7 @@ public sealed class AlertTests(MosquittoBroker broker) : IClassFixture<Mosquitto
 
     private static async Task AlertsAreThereAsync(HttpClient http)
     {
-        JsonArray alerts = JsonNode.Parse(await http.GetStringAsync("/api/alerts"))!.AsArray();
+        JsonArray alerts = JsonNode.Parse(await http.GetStringAsync("/api/alerts", TestContext.Current.CancellationToken))!.AsArray();
         Assert.All(FaultyArrays.All, pair => Assert.Contains(alerts, a => a!["array"]!.GetValue<string>() == pair.Key && Is(a, pair.Key, pair.Value.Channels)));
     }
 

@@ -8,7 +8,7 @@ public sealed class DemoTests
         await using ServiceProcess demo = ServiceProcess.Start("demo");
         string line = await demo.LineAsync(static l => l.StartsWith("Pages:", StringComparison.Ordinal));
         using HttpClient http = new() { BaseAddress = new Uri(line.Split(' ', StringSplitOptions.RemoveEmptyEntries)[1]) };
-        Assert.Contains("plover", await http.GetStringAsync("/api/arrays"), StringComparison.Ordinal);
+        Assert.Contains("plover", await http.GetStringAsync("/api/arrays", TestContext.Current.CancellationToken), StringComparison.Ordinal);
         string alert = await demo.LineAsync(static l => l.Contains("  ALERT  ", StringComparison.Ordinal));
         Assert.True(alert.Contains("dead of H7", StringComparison.Ordinal) || alert.Contains("polarity of M05", StringComparison.Ordinal) || alert.Contains("polarity of M5", StringComparison.Ordinal), alert);
         await demo.SignalAsync("INT");

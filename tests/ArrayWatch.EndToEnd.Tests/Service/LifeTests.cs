@@ -46,14 +46,14 @@ public sealed class LifeTests(MosquittoBroker broker) : IClassFixture<MosquittoB
         await using ServiceProcess service = ServiceProcess.Start("run", "--config", folder.Write(WorkFolder.Small(broker.Port, port)));
         using HttpClient http = new() { BaseAddress = new Uri($"http://127.0.0.1:{port}") };
         await AnswersAsync(http, "/health/ready", HttpStatusCode.OK);
-        Assert.Equal(HttpStatusCode.OK, (await http.GetAsync("/health/live")).StatusCode);
-        Assert.Contains("aft", await http.GetStringAsync("/api/arrays"), StringComparison.Ordinal);
-        string page = await http.GetStringAsync("/");
+        Assert.Equal(HttpStatusCode.OK, (await http.GetAsync("/health/live", TestContext.Current.CancellationToken)).StatusCode);
+        Assert.Contains("aft", await http.GetStringAsync("/api/arrays", TestContext.Current.CancellationToken), StringComparison.Ordinal);
+        string page = await http.GetStringAsync("/", TestContext.Current.CancellationToken);
         string style = page.Split("href=\"").Skip(1).Select(static p => p.Split('"')[0]).First(static p => p.Contains(".css", StringComparison.Ordinal));
-        Assert.Equal("text/css", (await http.GetAsync(style)).Content.Headers.ContentType?.MediaType);
-        HttpResponseMessage measurements = await http.GetAsync("/metrics");
+        Assert.Equal("text/css", (await http.GetAsync(style, TestContext.Current.CancellationToken)).Content.Headers.ContentType?.MediaType);
+        HttpResponseMessage measurements = await http.GetAsync("/metrics", TestContext.Current.CancellationToken);
         Assert.Equal("application/openmetrics-text", measurements.Content.Headers.ContentType?.MediaType);
-        string text = await measurements.Content.ReadAsStringAsync();
+        string text = await measurements.Content.ReadAsStringAsync(TestContext.Current.CancellationToken);
         Assert.Contains("arraywatch_messaging_connected", text, StringComparison.Ordinal);
         Assert.Contains("dotnet_", text, StringComparison.Ordinal);
         Assert.EndsWith("# EOF\n", text, StringComparison.Ordinal);
@@ -70,7 +70,7 @@ public sealed class LifeTests(MosquittoBroker broker) : IClassFixture<MosquittoB
         await using ServiceProcess service = ServiceProcess.Start("run", "--config", folder.Write(WorkFolder.Small(own.Port, port)));
         using HttpClient http = new() { BaseAddress = new Uri($"http://127.0.0.1:{port}") };
         await AnswersAsync(http, "/health/ready", HttpStatusCode.ServiceUnavailable);
-        Assert.Equal(HttpStatusCode.OK, (await http.GetAsync("/health/live")).StatusCode);
+        Assert.Equal(HttpStatusCode.OK, (await http.GetAsync("/health/live", TestContext.Current.CancellationToken)).StatusCode);
         await own.StartAsync();
         await AnswersAsync(http, "/health/ready", HttpStatusCode.OK);
     }

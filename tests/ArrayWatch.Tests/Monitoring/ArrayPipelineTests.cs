@@ -155,7 +155,7 @@ public sealed class ArrayPipelineTests : IDisposable
         Send(4);
         Assert.True(_harness.Pipeline.View.Health!.Snapshots >= before + 8);
         Assert.False(_harness.Pipeline.View.Corrections!.Channels[2].Use);
-        Assert.Equal(Detection.Standing.OutOfService, _harness.Pipeline.View.Health!.Channels[2].Standing);
+        Assert.Equal(ArrayWatch.Detection.Standing.OutOfService, _harness.Pipeline.View.Health!.Channels[2].Standing);
     }
 
     [Fact]
