@@ -1,3 +1,0 @@
-namespace ArrayWatch.Storage;
-
-internal static class Placeholder;
