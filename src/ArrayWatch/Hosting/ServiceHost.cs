@@ -3,6 +3,7 @@ using ArrayWatch.Commands;
 using ArrayWatch.Configuration;
 using ArrayWatch.Messaging;
 using ArrayWatch.Monitoring;
+using ArrayWatch.Storage;
 using ArrayWatch.Web;
 using Microsoft.AspNetCore.Connections;
 
@@ -31,6 +32,11 @@ internal static class ServiceHost
         catch (Exception exception) when (exception is IOException or UnauthorizedAccessException)
         {
             await errors.WriteLineAsync($"The log folder {configuration.Log.Folder} (log.folder) cannot be used: {exception.Message}");
+            return ExitCode.Unavailable;
+        }
+        catch (StoreUnavailableException exception)
+        {
+            await errors.WriteLineAsync(exception.Message);
             return ExitCode.Unavailable;
         }
 
@@ -94,15 +100,32 @@ internal static class ServiceHost
         builder.Services.Configure<HostOptions>(static o => o.ShutdownTimeout = _stopLimit);
         builder.Services.AddMeasurements();
         builder.Services
-            .AddStorage(configuration.Store, configuration.Influx)
+            .AddStorage(
+                new StoreOptions(configuration.Store.Path, configuration.Store.RetentionDays),
+                configuration.Influx is { } i ? new InfluxOptions(i.Url, i.Organization, i.Bucket, Token(i)) : null)
             .AddMonitoring(configuration.Arrays)
             .AddMessaging(configuration.Broker);
+    }
+
+    private static string Token(InfluxSettings settings)
+    {
+        if (settings.Token is { } token) return token;
+        if (settings.TokenFile is not { } file) return "";
+        try
+        {
+            return File.ReadAllText(file).Trim();
+        }
+        catch (Exception exception) when (exception is IOException or UnauthorizedAccessException)
+        {
+            throw new StoreUnavailableException($"the token file {file} (influx.tokenFile) cannot be read: {exception.Message}", exception);
+        }
     }
 
     /// <summary>One line for people when a port or a file cannot be had; null when it is something else.</summary>
     private static string? Unavailable(Exception exception, ServiceConfiguration configuration) => exception switch
     {
         MessagingStartException => exception.Message,
+        StoreUnavailableException => $"{exception.Message} (store.path)",
         IOException { InnerException: AddressInUseException } =>
             $"{configuration.WebUrl} (web.url) cannot be had: something else listens there; stop it or choose another port.",
         SocketException => $"{configuration.WebUrl} (web.url) cannot be had: {exception.Message}; choose an address and a port of this machine.",
