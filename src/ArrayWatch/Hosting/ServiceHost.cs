@@ -46,8 +46,16 @@ internal static class ServiceHost
             {
                 await host.StartAsync(cancellation);
             }
+            catch (OperationCanceledException) when (IsStopping(host))
+            {
+                // Told to stop before everything ran.
+                await host.StopAsync(CancellationToken.None);
+                return ExitCode.Success;
+            }
             catch (Exception exception) when (Unavailable(exception, configuration) is { } cause)
             {
+                // Else the services that did start would log their end as a failure.
+                host.Services.GetRequiredService<IHostApplicationLifetime>().StopApplication();
                 await errors.WriteLineAsync(cause);
                 return ExitCode.Unavailable;
             }
@@ -59,6 +67,9 @@ internal static class ServiceHost
                 : ExitCode.Success;
         }
     }
+
+    private static bool IsStopping(IHost host) =>
+        host.Services.GetRequiredService<IHostApplicationLifetime>().ApplicationStopping.IsCancellationRequested;
 
     private static IHost Create(ServiceConfiguration configuration, Action<IServiceCollection>? addMore)
     {
