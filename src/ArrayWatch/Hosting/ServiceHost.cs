@@ -110,6 +110,7 @@ internal static class ServiceHost
         builder.Services.AddSystemd();
         builder.Services.Configure<HostOptions>(static o => o.ShutdownTimeout = _stopLimit);
         builder.Services.AddMeasurements();
+        builder.Services.AddSingleton(configuration.Arrays);
         builder.Services
             .AddStorage(
                 new StoreOptions(configuration.Store.Path, configuration.Store.RetentionDays),
