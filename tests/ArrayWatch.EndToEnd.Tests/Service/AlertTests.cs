@@ -21,8 +21,8 @@ public sealed class AlertTests(MosquittoBroker broker) : IClassFixture<Mosquitto
             foreach ((string kind, var fault) in FaultyArrays.All)
             {
                 await Eventually.HoldsAsync(() => watcher.Of($"arraywatch/{kind}/alerts").Any(a => Is(a, kind, fault.Channels)), kind);
-                Assert.NotNull(watcher.Of($"arraywatch/{kind}/health").LastOrDefault());
-                Assert.NotNull(watcher.Of($"arraywatch/{kind}/corrections").LastOrDefault());
+                await Eventually.HoldsAsync(() => watcher.Of($"arraywatch/{kind}/health").Any(), $"{kind} health");
+                await Eventually.HoldsAsync(() => watcher.Of($"arraywatch/{kind}/corrections").Any(), $"{kind} corrections");
             }
 
             await AlertsAreThereAsync(http);
