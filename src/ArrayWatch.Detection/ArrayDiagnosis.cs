@@ -83,7 +83,7 @@ public sealed class ArrayDiagnosis
             OutOfService = input.OutOfService,
         };
         foreach (IFaultHypothesis hypothesis in FaultHypotheses.All) hypothesis.Propose(scene);
-        _ledger.Take(GroupRule.Apply(scene.Candidates, _geometry), elapsed, c => Onset(c, input.TimeSeconds), ready && understood);
+        _ledger.Take(Plausible(GroupRule.Apply(scene.Candidates, _geometry)), elapsed, c => Onset(c, input.TimeSeconds), ready && understood);
         Finding[] findings = [.. _ledger.Standing.Select(ToFinding)];
         ChannelCorrection[] corrections = CorrectionBuilder.Corrections(findings, _tracker.Summaries, bins, input.OutOfService);
         return new Diagnosis
@@ -134,6 +134,15 @@ public sealed class ArrayDiagnosis
         double edge = bins.Length == 0 ? 0 : ApertureTrend.Median([.. bins.Select(b => Math.Pow(1 + Math.Sqrt(trusted / snapshots), 2))]);
         double median = ApertureTrend.Median([.. bins.Where(b => b.LargestEigenvalue > 0).Select(b => b.LargestEigenvalue)]);
         return trusted > _geometry.Count / 2 && median < 4 * edge;
+    }
+
+    // Many channels that drift apart by phases and delays of their own at one time are a wave front that the model does not hold
+    // (a near source, a bent array), not so many faults.
+    private IReadOnlyList<Candidate> Plausible(IReadOnlyList<Candidate> candidates)
+    {
+        int bent = candidates.Count(c => c.Kind is "phase" or "delay" && c.Group is null);
+        if (bent <= Math.Max(2, _geometry.Count / 8)) return candidates;
+        return [.. candidates.Where(c => c.Group is not null || c.Kind is not ("phase" or "delay") || _ledger.Concerns(c.Indices[0]))];
     }
 
     private void NoteDeviations(double time, double elapsed)

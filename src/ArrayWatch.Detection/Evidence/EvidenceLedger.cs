@@ -59,6 +59,12 @@ internal sealed class EvidenceLedger
     /// <summary>One explanation over time.</summary>
     internal sealed class Entry(Candidate first, double onset)
     {
+        // A fault keeps its size; an estimate that wanders by more than this, in tolerances or as a share, is a field that is misunderstood.
+        private const double WandersBy = 0.6;
+        private const double WandersShare = 0.25;
+
+        private double _size = first.Size;
+
         /// <summary>The last decision's view; what it is about stays as it was when raised.</summary>
         public Candidate Latest { get; private set; } = first;
 
@@ -73,6 +79,8 @@ internal sealed class EvidenceLedger
 
         public void Take(Candidate candidate, double fill, bool mayRaise)
         {
+            if (!Stands && Math.Abs(candidate.Size - _size) > WandersBy + (WandersShare * Math.Abs(_size))) Fill = 0;
+            _size = double.IsNaN(_size) ? candidate.Size : _size + (0.5 * (candidate.Size - _size));
             Latest = Stands ? candidate with { Indices = Latest.Indices } : candidate;
             Fill = Math.Min(1, Fill + fill);
             Nats = Math.Max(Nats, candidate.Nats);

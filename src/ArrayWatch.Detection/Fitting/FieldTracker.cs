@@ -20,6 +20,9 @@ internal sealed class FieldTracker
     private const double Returns = 0.8;
     private const double LeastRecent = 12;
 
+    // A pattern that was found is held down to this share of the threshold, so that it does not come and go with chance.
+    private const double StaysForeign = 0.65;
+
     // One or two plane waves make this much of any arrival that the grid may have missed.
     private const double ExplainedByWaves = 0.85;
 
@@ -172,10 +175,11 @@ internal sealed class FieldTracker
         ForeignSearch search = new(_work);
         double eigenvalue = search.Search(bin.Powers!, Trusted);
         bin.Evidence.LargestEigenvalue = eigenvalue;
+        double ease = bin.Evidence.Foreign is null ? 1 : StaysForeign;
         bin.Evidence.Foreign = null;
         double usual = ApertureTrend.Median([.. _bins.Where(b => b != bin && b.Evidence.LargestEigenvalue > 0).Select(b => b.Evidence.LargestEigenvalue)]);
         double threshold = 1.6 * Threshold(Trusted.Count(t => t), Math.Max(snapshots, 2));
-        if (eigenvalue <= Math.Max(threshold, 2.5 * usual)) return;
+        if (eigenvalue <= ease * Math.Max(threshold, 2.5 * usual)) return;
         double waves = search.ShareOfWaves(bin.Powers!.Basis, Trusted);
         if (waves >= ExplainedByWaves) return;
         double[] power = [.. bin.GivePattern(search.Pattern).Select(p => (p.Real * p.Real) + (p.Imaginary * p.Imaginary))];

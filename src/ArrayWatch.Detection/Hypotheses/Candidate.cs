@@ -26,6 +26,9 @@ internal sealed record Candidate
     /// <summary>The module whose channels failed together; null for none.</summary>
     public string? Group { get; init; }
 
+    /// <summary>The estimate that a lasting fault keeps, in units of its tolerance; NaN for kinds without one.</summary>
+    public double Size { get; init; } = double.NaN;
+
     /// <summary>Tells this fault from others of its kind over time; the channels unless the kind says otherwise.</summary>
     public string? Identity { get; init; }
 

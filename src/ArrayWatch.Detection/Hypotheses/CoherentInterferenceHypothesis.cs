@@ -11,7 +11,7 @@ internal sealed class CoherentInterferenceHypothesis : IFaultHypothesis
     // A channel carries the pattern when it holds at least a tenth of the field's power there,
     // and is within this of the channel that carries most.
     private const double LeastShare = 0.1;
-    private const double WithinOfMost = 0.12;
+    private const double WithinOfMost = 0.06;
     private const double MainsWidth = 0.01;
 
     public void Propose(DecisionScene scene)

@@ -19,6 +19,7 @@ internal sealed class DelayHypothesis : IFaultHypothesis
             {
                 Kind = "delay",
                 Indices = [s.Index],
+                Size = tau / limit,
                 Nats = Math.Min(DecisionScene.Beyond(tau, limit, Math.Max(error, 0.02 * limit)), s.Phase.CostNone - s.Phase.CostDelay),
                 Estimate = new Dictionary<string, object> { ["delayMicroseconds"] = tau, ["standardErrorMicroseconds"] = error },
                 Evidence = new Dictionary<string, double>

@@ -16,6 +16,7 @@ internal sealed class GainHypothesis : IFaultHypothesis
             {
                 Kind = "gain",
                 Indices = [s.Index],
+                Size = s.GainDecibels / limit,
                 Nats = DecisionScene.Beyond(s.GainDecibels, limit, error),
                 Estimate = new Dictionary<string, object> { ["gainDecibels"] = s.GainDecibels, ["standardErrorDecibels"] = error },
                 Evidence = new Dictionary<string, double>

@@ -17,6 +17,7 @@ internal sealed class PhaseHypothesis : IFaultHypothesis
             {
                 Kind = "phase",
                 Indices = [s.Index],
+                Size = degrees / limit,
                 Nats = Math.Min(
                     DecisionScene.Beyond(degrees, limit, Math.Max(error, 0.3 * s.ModelError * 180 / Math.PI)), s.Phase.CostNone - s.Phase.CostConstant),
                 Estimate = new Dictionary<string, object> { ["phaseDegrees"] = degrees, ["standardErrorDegrees"] = error },
