@@ -24,6 +24,9 @@ public sealed class ArrayDiagnosis
     // Time that full evidence must last, in fast memories: three of the recent one, after which a change has turned over in it.
     private const double DwellMemories = 0.75;
 
+    // Time after which a change leaves less than a twentieth of what was before in the fast memory.
+    private const double SettlingMemories = 3;
+
     private const double BeamsEverySeconds = 60;
 
     private readonly ArrayGeometry _geometry;
@@ -81,6 +84,7 @@ public sealed class ArrayDiagnosis
             Summaries = _tracker.Summaries,
             Trusted = _tracker.Trusted,
             OutOfService = input.OutOfService,
+            IsSettling = _deviatesSince.Count(t => input.TimeSeconds - t < SettlingMemories * _options.TimeConstantSeconds) > 1,
         };
         foreach (IFaultHypothesis hypothesis in FaultHypotheses.All) hypothesis.Propose(scene);
         _ledger.Take(Plausible(GroupRule.Apply(scene.Candidates, _geometry)), elapsed, c => Onset(c, input.TimeSeconds), ready && understood);

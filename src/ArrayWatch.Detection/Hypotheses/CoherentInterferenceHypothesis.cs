@@ -40,7 +40,8 @@ internal sealed class CoherentInterferenceHypothesis : IFaultHypothesis
             Kind = "coherent-interference",
             Identity = "pattern",
             Indices = carriers,
-            Nats = nats,
+            // While several channels turn over in the memory, a mixture of before and after passes for a pattern.
+            Nats = scene.IsSettling ? 0 : nats,
             Estimate = new Dictionary<string, object>
             {
                 ["frequencies"] = patterns.Select(p => p.Frequency).ToArray(),

@@ -21,6 +21,9 @@ internal sealed class DecisionScene
 
     public required IReadOnlySet<int> OutOfService { get; init; }
 
+    /// <summary>True while channels that lately began to deviate are still part of what the fast memory holds.</summary>
+    public required bool IsSettling { get; init; }
+
     public IReadOnlyList<Candidate> Candidates => _candidates;
 
     /// <summary>Channels that deviate, are judged at all, and are not explained yet.</summary>

@@ -113,6 +113,7 @@ internal static class ServiceHost
         builder.Services.AddSingleton(configuration.Arrays);
         builder.Services
             .AddStorage(
+                configuration.Arrays,
                 new StoreOptions(configuration.Store.Path, configuration.Store.RetentionDays),
                 configuration.Influx is { } i ? new InfluxOptions(i.Url, i.Organization, i.Bucket, Token(i)) : null)
             .AddMonitoring(configuration.Arrays)
