@@ -33,8 +33,24 @@ public sealed class AlertTests(MosquittoBroker broker) : IClassFixture<Mosquitto
         await watcher.StatusIsAsync("offline");
         await using ServiceProcess again = ServiceProcess.Start("run", "--config", configuration);
         await watcher.StatusIsAsync("online");
+        await IsServedAsync(http);
         await AlertsAreThereAsync(http);
     }
+
+    /// <summary>The pages come last when the service starts, after it has said that it is online.</summary>
+    private static Task IsServedAsync(HttpClient http) => Eventually.HoldsAsync(() =>
+    {
+        try
+        {
+            using HttpRequestMessage request = new(HttpMethod.Get, "/health/live");
+            using HttpResponseMessage response = http.Send(request);
+            return response.IsSuccessStatusCode;
+        }
+        catch (HttpRequestException)
+        {
+            return false;
+        }
+    });
 
     private static async Task AlertsAreThereAsync(HttpClient http)
     {
