@@ -111,9 +111,10 @@ public sealed class ArrayDiagnosis
     {
         ArgumentNullException.ThrowIfNull(destination);
         ArgumentOutOfRangeException.ThrowIfNegative(bin);
-        if (bin >= _tracker.Bins.Count || _tracker.Bins[bin].Powers is not { FieldPower: > 0 } powers) return false;
-        powers.WriteField(destination);
+        if (bin >= _tracker.Bins.Count || _tracker.Bins[bin].Powers is not { } powers) return false;
+        if (!HasModel(_tracker.Bins[bin])) return false;
         double usual = ApertureTrend.Median([.. powers.ChannelNoise]);
+        powers.WriteField(destination);
         for (int i = 0; i < _geometry.Count; i++) destination.Re[(i * _geometry.Count) + i] += usual;
         return true;
     }
@@ -222,10 +223,12 @@ public sealed class ArrayDiagnosis
         void Add(string name, double share) => sums[name] = sums.GetValueOrDefault(name) + share;
     }
 
+    private static bool HasModel(BinTracker bin) => bin.Powers is { } powers && powers.FieldPower + ApertureTrend.Median([.. powers.ChannelNoise]) > 0;
+
     private IReadOnlyList<BeamAssessment> Beams(DecisionInput input, Finding[] findings, BinEvidence[] bins, ChannelCorrection[] corrections)
     {
         string key = string.Join(';', findings.Select(f => f.Kind + string.Join(',', f.Indices))) + string.Join(',', input.OutOfService.Order());
-        if (_options.LookDirections.Count == 0 || bins.Any(b => b.ExpectedLevel[0] <= 0)) return [];
+        if (_options.LookDirections.Count == 0 || _tracker.Bins.Any(b => !HasModel(b))) return [];
         if (key == _beamsFor && input.TimeSeconds - _beamsAt < BeamsEverySeconds) return _beamResult;
         (_beamsFor, _beamsAt) = (key, input.TimeSeconds);
         _beamResult = _beams.Assess(

@@ -72,6 +72,36 @@ public sealed class DiagnosisTests
     }
 
     [Fact]
+    public void Channels_that_share_nothing_are_neither_trusted_nor_an_error()
+    {
+        Random random = new(5);
+        ArrayGeometry geometry = ArrayGeometry.UniformLine(4, 1, new Position(1, 0, 0));
+        ArrayDiagnosis diagnosis = new(geometry, new DiagnosisOptions { TimeConstantSeconds = 10, LookDirections = [new("broadside", 90, 0)] });
+        ExponentialCovariance fast = new(4, 2, TimeSpan.FromSeconds(10)), recent = new(4, 2, TimeSpan.FromSeconds(2.5));
+        float[] data = new float[2 * 20 * 2 * 4];
+        for (int k = 0; k < 40; k++)
+        {
+            for (int i = 0; i < data.Length; i++) data[i] = (float)(random.NextDouble() - random.NextDouble());
+            fast.Fold(data, 20, 0.1, 0);
+            recent.Fold(data, 20, 0.1, 0);
+            Diagnosis d = diagnosis.Decide(new DecisionInput { TimeSeconds = 2 * k, Frequencies = [100, 200], SoundSpeed = 1500, Recent = recent, Fast = fast });
+            Assert.DoesNotContain(d.Findings, f => f.Kind is "phase" or "delay" or "polarity" or "swap");
+        }
+    }
+
+    [Fact]
+    public void Silence_on_every_channel_is_no_error()
+    {
+        ArrayDiagnosis diagnosis = new(Line(), new DiagnosisOptions { TimeConstantSeconds = 10 });
+        ExponentialCovariance fast = new(20, 1, TimeSpan.FromSeconds(10)), recent = new(20, 1, TimeSpan.FromSeconds(2.5));
+        float[] zeros = new float[2 * 100 * 20];
+        fast.Fold(zeros, 100, 0.1, 0);
+        recent.Fold(zeros, 100, 0.1, 0);
+        Diagnosis d = diagnosis.Decide(new DecisionInput { TimeSeconds = 10, Frequencies = [100], SoundSpeed = 1500, Recent = recent, Fast = fast });
+        Assert.All(d.Channels, c => Assert.Equal(Standing.Unknown, c.Standing));
+    }
+
+    [Fact]
     public void An_unknown_field_component_is_refused_with_the_known_ones()
     {
         ArgumentException e = Assert.Throws<ArgumentException>(() => new ArrayDiagnosis(Line(), new DiagnosisOptions { FieldComponents = ["isotropc"] }));
