@@ -12,6 +12,9 @@ internal sealed class CoherentInterferenceHypothesis : IFaultHypothesis
     // and is within this of the channel that carries most.
     private const double LeastShare = 0.1;
     private const double WithinOfMost = 0.06;
+
+    // What most channels carry reaches the array as a whole: its weaker channels are then named down to a tenth of those limits.
+    private const double WholeArray = 0.6;
     private const double MainsWidth = 0.01;
 
     public void Propose(DecisionScene scene)
@@ -33,6 +36,12 @@ internal sealed class CoherentInterferenceHypothesis : IFaultHypothesis
         int[] carriers = [.. Enumerable.Range(0, n).Where(i =>
             !scene.IsClaimed(i) && !scene.OutOfService.Contains(i) && relative[i] > LeastShare && relative[i] > WithinOfMost * most)];
         if (carriers.Length < 3) return;
+        if (carriers.Length > WholeArray * n)
+        {
+            carriers = [.. Enumerable.Range(0, n).Where(i =>
+                !scene.IsClaimed(i) && !scene.OutOfService.Contains(i) && relative[i] > LeastShare / 10 && relative[i] > WithinOfMost * most / 10)];
+        }
+
         double snapshots = scene.Bins[0].Snapshots.Max();
         double nats = patterns.Sum(p => snapshots * (p.Eigenvalue - 1 - Math.Log(p.Eigenvalue))) / 4;
         scene.Add(new Candidate
