@@ -1,3 +1,5 @@
+using System.Diagnostics.Metrics;
+using System.Text.Json;
 using ArrayWatch.Monitoring;
 using InfluxDB.Client;
 using InfluxDB.Client.Core.Exceptions;
@@ -21,6 +23,8 @@ public sealed partial class InfluxForwarder : BackgroundService
     private readonly MetricStore _store;
     private readonly InfluxOptions _options;
     private readonly Dictionary<string, string[]> _labels;
+    private readonly Meter _meter = new("ArrayWatch.Storage");
+    private readonly Counter<long> _refused;
     private readonly TimeProvider _clock;
     private readonly ILogger<InfluxForwarder> _log;
 
@@ -29,6 +33,7 @@ public sealed partial class InfluxForwarder : BackgroundService
     {
         ArgumentNullException.ThrowIfNull(arrays);
         (_store, _options, _clock, _log) = (store, options, clock, log);
+        _refused = _meter.CreateCounter<long>("arraywatch.storage.forward_refused");
         _labels = arrays.ToDictionary(a => a.Id, a => a.Geometry.Channels.Select(c => c.Label).ToArray());
     }
 
@@ -82,7 +87,7 @@ public sealed partial class InfluxForwarder : BackgroundService
             Org = _options.Organization,
             Bucket = _options.Bucket,
         });
-        List<PointData> points = [.. rows.SelectMany(r => InfluxPoints.Of(r, _labels.GetValueOrDefault(r.Array, [])))];
+        List<PointData> points = [.. rows.SelectMany(Points)];
         if (points.Count > 0)
         {
             try
@@ -92,7 +97,7 @@ public sealed partial class InfluxForwarder : BackgroundService
             catch (HttpException e) when (e.Status is 400 or 413 or 422)
             {
                 if (rows.Count > 1) await OneByOneAsync(client, rows, cancellation).ConfigureAwait(false);
-                else LogRefused(e.Message);
+                else Refuse(e.Message);
             }
         }
 
@@ -107,14 +112,41 @@ public sealed partial class InfluxForwarder : BackgroundService
         {
             try
             {
-                await client.GetWriteApiAsync().WritePointsAsync(
-                    [.. InfluxPoints.Of(row, _labels.GetValueOrDefault(row.Array, []))], _options.Bucket, _options.Organization, cancellation).ConfigureAwait(false);
+                List<PointData> points = Points(row);
+                if (points.Count > 0) await client.GetWriteApiAsync().WritePointsAsync(points, _options.Bucket, _options.Organization, cancellation).ConfigureAwait(false);
             }
             catch (HttpException e) when (e.Status is 400 or 413 or 422)
             {
-                LogRefused(e.Message);
+                Refuse(e.Message);
             }
         }
+    }
+
+    // A row that cannot be read must not hold up those behind it.
+    private List<PointData> Points(OutboxRow row)
+    {
+        try
+        {
+            return [.. InfluxPoints.Of(row, _labels.GetValueOrDefault(row.Array, []))];
+        }
+        catch (Exception e) when (e is JsonException or InvalidDataException or NotSupportedException)
+        {
+            Refuse(e.Message);
+            return [];
+        }
+    }
+
+    private void Refuse(string cause)
+    {
+        _refused.Add(1);
+        LogRefused(cause);
+    }
+
+    /// <inheritdoc/>
+    public override void Dispose()
+    {
+        _meter.Dispose();
+        base.Dispose();
     }
 
     [LoggerMessage(Level = LogLevel.Warning, Message = "{Target} cannot be reached ({Cause}); copies wait in the store")]

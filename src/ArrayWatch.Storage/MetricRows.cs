@@ -18,8 +18,7 @@ internal sealed class MetricRows(SqliteConnection connection, IReadOnlyDictionar
         long layout = layouts.GetValueOrDefault(array, -1);
         foreach ((string name, float[] v) in metrics.Channels) Put(array, name, t, layout, v);
         foreach ((string name, double v) in metrics.Field) Put(array, name, t, 0, [(float)v]);
-        if (!_pruned.TryGetValue(array, out long last)) _pruned[array] = t;
-        else if (t - last >= 3_600_000) Prune(array, t);
+        if (!_pruned.TryGetValue(array, out long last) || t - last >= 3_600_000) Prune(array, t);
     }
 
     private void Put(string array, string name, long time, long layout, float[] values)
@@ -51,8 +50,17 @@ internal sealed class MetricRows(SqliteConnection connection, IReadOnlyDictionar
         Upsert(array, name, Seconds[level], start, layout, sum.Write());
     }
 
+    // Steps from name to name along the index: listing distinct names would read the whole array.
+    private List<string> Names(string array)
+    {
+        List<string> names = [];
+        while (Schema.Scalar(connection, "SELECT MIN(name) FROM metric WHERE array=$a AND name>$n", ("$a", array), ("$n", names.LastOrDefault(""))) is string next)
+            names.Add(next);
+        return names;
+    }
+
     private void Upsert(string array, string name, int seconds, long time, long layout, byte[] data) => Schema.Run(
-        connection, "INSERT OR REPLACE INTO metric VALUES ($a,$n,$s,$t,$l,$d)",
+        connection, "INSERT INTO metric VALUES ($a,$n,$s,$t,$l,$d) ON CONFLICT (array, name, seconds, time, layout) DO UPDATE SET data=excluded.data",
         ("$a", array), ("$n", name), ("$s", seconds), ("$t", time), ("$l", layout), ("$d", data));
 
     /// <summary>Raw for two days, minutes for two weeks, the rest and the pictures for the whole retention.</summary>
@@ -62,10 +70,11 @@ internal sealed class MetricRows(SqliteConnection connection, IReadOnlyDictionar
         for (int k = 0; k < Seconds.Length; k++)
         {
             int days = Math.Min(retentionDays, k switch { 0 => 2, 1 => 14, _ => retentionDays });
-            Schema.Run(connection, """
-                DELETE FROM metric WHERE array=$a AND seconds=$s AND time<$t
-                AND name IN (SELECT DISTINCT name FROM metric WHERE array=$a)
-                """, ("$a", array), ("$s", Seconds[k]), ("$t", now - (days * 86_400_000L)));
+            foreach (string name in Names(array))
+            {
+                Schema.Run(connection, "DELETE FROM metric WHERE array=$a AND name=$n AND seconds=$s AND time<$t",
+                    ("$a", array), ("$n", name), ("$s", Seconds[k]), ("$t", now - (days * 86_400_000L)));
+            }
         }
 
         Schema.Run(connection, "DELETE FROM picture WHERE array=$a AND time<$t", ("$a", array), ("$t", now - (retentionDays * 86_400_000L)));

@@ -40,8 +40,12 @@ public sealed partial class MetricStore : IHistory
             ("$f", OrNull(from?.ToUnixTimeMilliseconds())), ("$t", OrNull(to?.ToUnixTimeMilliseconds())), ("$n", limit));
 
     /// <inheritdoc/>
-    public Task<IReadOnlyList<AlertEvent>> AlertHistoryAsync(string alertId, CancellationToken cancellation) =>
-        ReadAsync("SELECT body FROM alert_change WHERE id=$i ORDER BY row", Body<AlertEvent>, cancellation, ("$i", alertId));
+    public async Task<IReadOnlyList<AlertEvent>> AlertHistoryAsync(string alertId, CancellationToken cancellation)
+    {
+        IReadOnlyList<AlertEvent> changes = await ReadAsync(
+            "SELECT body FROM alert_change WHERE id=$i ORDER BY row", Body<AlertEvent>, cancellation, ("$i", alertId)).ConfigureAwait(false);
+        return [.. changes.OrderBy(c => c.Changed)];
+    }
 
     /// <inheritdoc/>
     public Task<IReadOnlyList<AlertEvent>> OpenAlertsAsync(string array, CancellationToken cancellation) =>

@@ -16,6 +16,9 @@ namespace ArrayWatch.Storage;
 public sealed partial class MetricStore : IMonitorSink, IAsyncDisposable
 {
     private const int QueueLength = 4096, BatchLength = 512;
+
+    // The service has ten seconds to end: past this, what a locked or full disk does not take is counted and left.
+    private static readonly TimeSpan _patienceAtStop = TimeSpan.FromSeconds(3);
     private readonly Channel<Work> _queue = Channel.CreateBounded<Work>(QueueLength);
     private readonly Dictionary<string, long> _layouts = new(StringComparer.Ordinal);
     private readonly Dictionary<string, string[]> _labels = new(StringComparer.Ordinal);
@@ -29,6 +32,7 @@ public sealed partial class MetricStore : IMonitorSink, IAsyncDisposable
     private readonly TimeProvider _clock;
     private readonly ILogger<MetricStore> _log;
     private readonly Task _writer;
+    private bool _failing;
 
     /// <summary>Opens or creates the store.</summary>
     /// <exception cref="StoreUnavailableException">The file is corrupt, locked, or cannot be made.</exception>
@@ -94,7 +98,7 @@ public sealed partial class MetricStore : IMonitorSink, IAsyncDisposable
     public async ValueTask DisposeAsync()
     {
         if (!_queue.Writer.TryComplete()) return;
-        _stop.CancelAfter(TimeSpan.FromSeconds(10));
+        _stop.CancelAfter(_patienceAtStop);
         await _writer.ConfigureAwait(false);
         await _connection.DisposeAsync().ConfigureAwait(false);
         _meter.Dispose();
@@ -124,6 +128,14 @@ public sealed partial class MetricStore : IMonitorSink, IAsyncDisposable
         while (await _queue.Reader.WaitToReadAsync().ConfigureAwait(false))
         {
             while (batch.Count < BatchLength && _queue.Reader.TryRead(out Work? w)) batch.Add(w);
+            if (_failing && _stop.IsCancellationRequested)
+            {
+                _leftOut.Add(batch.Count);
+                foreach (Work w in batch) w.Done?.TrySetCanceled(_stop.Token);
+                batch.Clear();
+                continue;
+            }
+
             await CommitBatchAsync(batch).ConfigureAwait(false);
             batch.Clear();
         }
@@ -144,6 +156,7 @@ public sealed partial class MetricStore : IMonitorSink, IAsyncDisposable
                     t.Commit();
                 }
 
+                _failing = false;
                 _written.Add(batch.Count);
                 foreach (Work w in batch) w.Done?.TrySetResult();
                 return;
@@ -164,6 +177,7 @@ public sealed partial class MetricStore : IMonitorSink, IAsyncDisposable
             }
             catch (SqliteException e)
             {
+                _failing = true;
                 _errors.Add(1);
                 DateTimeOffset now = _clock.GetUtcNow();
                 if (logged is null || now - logged >= TimeSpan.FromMinutes(1))

@@ -23,6 +23,15 @@ internal static class Schema
         CREATE TABLE outbox (row INTEGER PRIMARY KEY AUTOINCREMENT, kind INTEGER NOT NULL, array TEXT NOT NULL, time INTEGER NOT NULL, body BLOB NOT NULL);
         CREATE TABLE cursor (target TEXT PRIMARY KEY, row INTEGER NOT NULL);
         """,
+        // Rows of a kilobyte take an overflow page each in a table without row ids; and a layout that changes within an interval has a row of its own.
+        """
+        CREATE TABLE metric_row (array TEXT NOT NULL, name TEXT NOT NULL, seconds INTEGER NOT NULL, time INTEGER NOT NULL,
+          layout INTEGER NOT NULL, data BLOB NOT NULL);
+        INSERT INTO metric_row SELECT array, name, seconds, time, layout, data FROM metric;
+        DROP TABLE metric;
+        ALTER TABLE metric_row RENAME TO metric;
+        CREATE UNIQUE INDEX metric_place ON metric (array, name, seconds, time, layout);
+        """,
     ];
 
     public static SqliteConnection Open(string path)
@@ -36,7 +45,7 @@ internal static class Schema
             throw new StoreUnavailableException($"the folder of the store '{path}' cannot be made: {e.Message}", e);
         }
 
-        SqliteConnection c = new(new SqliteConnectionStringBuilder { DataSource = path, DefaultTimeout = 5 }.ToString());
+        SqliteConnection c = new(new SqliteConnectionStringBuilder { DataSource = path, DefaultTimeout = 2 }.ToString());
         try
         {
             c.Open();

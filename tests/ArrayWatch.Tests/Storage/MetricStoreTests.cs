@@ -113,6 +113,74 @@ public sealed class MetricStoreTests : IDisposable
     }
 
     [Fact]
+    public async Task A_channel_list_that_changes_within_the_hour_keeps_what_both_saw()
+    {
+        await using (MetricStore store = Open()) await Write(store, 0, 180);
+        MetricStore changed = new(
+            new StoreOptions(FilePath), [new ArrayDefinition { Id = "aft", Geometry = ArrayGeometry.UniformLine(3, 1, new Position(1, 0, 0), "H"), Medium = new Medium.Given(1500) }],
+            TimeProvider.System, NullLogger<MetricStore>.Instance);
+        await using (changed)
+        {
+            await changed.WriteAsync(new MetricsOutput("aft", Start.AddSeconds(1800), new MetricSet(
+                new Dictionary<string, float[]> { ["levelDecibels"] = [180, 280, 5] }, new Dictionary<string, double>())), None);
+            await changed.FlushAsync(None);
+            TrendSeries hours = await changed.TrendAsync("aft", "levelDecibels", 0, Start, Start.AddHours(2), 2, None);
+            Assert.Equal(90, hours.Mean[0], 3);
+            Assert.Equal(0, hours.Minimum[0], 3);
+            Assert.Equal(180, hours.Maximum[0], 3);
+        }
+    }
+
+    [Fact]
+    public async Task A_year_of_sixty_four_channels_stays_under_two_gigabytes()
+    {
+        // Steady state by levels, from four hours written at ten-second steps: bytes a row, times rows kept. Pictures: the worst case,
+        // 64 channels of noise at every ten minutes (2080 pairs of four bytes and a half-precision separation, incompressible).
+        const int Samples = 1440, Channels = 64;
+        Random random = new(1);
+        string[] metrics = ["levelDecibels", "gainDecibels", "phaseDegrees", "delayMicroseconds", "excessDecibels"];
+        MetricStore store = new(
+            new StoreOptions(FilePath), [new ArrayDefinition { Id = "aft", Geometry = ArrayGeometry.UniformLine(Channels, 1, new Position(1, 0, 0), "H"), Medium = new Medium.Given(1500) }],
+            TimeProvider.System, NullLogger<MetricStore>.Instance);
+        await using (store)
+        {
+            for (int k = 0; k < Samples; k++)
+            {
+                await store.WriteAsync(new MetricsOutput("aft", Start.AddSeconds(10 * k), new MetricSet(
+                    metrics.ToDictionary(m => m, _ => Enumerable.Range(0, Channels).Select(_ => (float)random.NextDouble()).ToArray()),
+                    Enumerable.Range(0, 9).ToDictionary(i => $"field{i}", _ => random.NextDouble()))), None);
+            }
+
+            await store.FlushAsync(None);
+        }
+
+        using Microsoft.Data.Sqlite.SqliteConnection c = new($"Data Source={FilePath}");
+        c.Open();
+        double PagesOf(string condition)
+        {
+            // The level alone in a file of its own, packed as it would lie, with its index.
+            using Microsoft.Data.Sqlite.SqliteCommand k = c.CreateCommand();
+#pragma warning disable CA2100 // The conditions are constants of this test.
+            k.CommandText = $"""
+                ATTACH ':memory:' AS level; CREATE TABLE level.metric AS SELECT * FROM metric WHERE {condition};
+                CREATE UNIQUE INDEX level.place ON metric (array, name, seconds, time, layout);
+                """;
+#pragma warning restore CA2100
+            k.ExecuteNonQuery();
+            k.CommandText = "PRAGMA level.page_count";
+            double bytes = 4096.0 * (long)k.ExecuteScalar()!;
+            k.CommandText = "DETACH level";
+            k.ExecuteNonQuery();
+            return bytes;
+        }
+
+        double PerHour(string seconds) => PagesOf("seconds=" + seconds) / 4;
+        double year = (PerHour("0") * 48) + (PerHour("60") * 24 * 14) + (PerHour("600") * 8760) + (PerHour("3600") * 8760);
+        double pictures = 8760.0 * 6 * 2080 * 6;
+        Assert.InRange(year + pictures, 0, 2e9);
+    }
+
+    [Fact]
     public void A_file_that_is_no_store_is_refused_in_one_line()
     {
         string path = Path.Combine(_folder, "broken.db");
